@@ -1,0 +1,205 @@
+//! One column: its fit, what was inferred, its figures and its captions.
+
+use super::{
+    near_zero::{self, ZeroFacts},
+    numbers,
+    observe::{Observation, fitted},
+    types::{Caption, Captions, Coefficient, ColumnEvaluation, FitEvaluation},
+    words::{self, ResidualFacts},
+};
+use crate::{
+    distributions::t_quantile,
+    fit::{self, Fit, FitError, Point},
+    inference::{bands::Bands, departure::departure, lack_of_fit::lack_of_fit, shape::shape},
+    model::{Family, formula::Formula},
+    project::{Project, columns::ColumnSpec, plan::ZeroState},
+};
+
+/// Fits one column and says what it shows.
+#[must_use]
+pub fn evaluate(
+    project: &Project,
+    observations: &[Observation],
+    spec: &ColumnSpec,
+    zeros: &ZeroFacts,
+) -> ColumnEvaluation {
+    let used = used(project, observations, spec);
+    let points: Vec<Point> = used.iter().map(|&i| observations[i].point()).collect();
+    let allowed = project.plan.allows(&spec.family);
+    let formula = match (&spec.family, &project.declared) {
+        (Family::Declared, Some(declared)) => format!("y = {}", declared.formula),
+        (family, _) => family.printed_formula(),
+    };
+    let mut column = ColumnEvaluation {
+        spec: spec.clone(),
+        head: spec.head(),
+        formula,
+        captions: Captions::default(),
+        figures: Vec::new(),
+        findings: Vec::new(),
+        outcome: Err(String::new()),
+        allowed,
+    };
+    match fit_column(project, spec, &points) {
+        Err(reason) => {
+            let reason = place(&reason, project, observations, &used);
+            column.captions.curve = Caption::plain(reason.clone());
+            column.outcome = Err(reason);
+        }
+        Ok(fit) => {
+            let zeros_fitted = used.iter().any(|&i| observations[i].is_zero());
+            let evaluation = infer(project, fit, used, zeros_fitted, zeros);
+            column.captions = captions(project, &evaluation, zeros);
+            column.figures = numbers::figures(project, &evaluation, zeros);
+            column.outcome = Ok(Box::new(evaluation));
+        }
+    }
+    column
+}
+
+/// Observations that a column fits: the zeros take part where the plan lets them and the family has a value at 0.
+fn used(project: &Project, observations: &[Observation], spec: &ColumnSpec) -> Vec<usize> {
+    let zero_is_value = matches!(project.plan.zero_state, ZeroState::Zero | ZeroState::LiveZero);
+    let has_value = spec.family.has_value_at(0.0);
+    fitted(observations, spec.zeros.unwrap_or(project.plan.zeros_part), zero_is_value && has_value)
+}
+
+enum NoFit {
+    Undeclared,
+    Formula(String),
+    Fit(FitError),
+}
+
+fn fit_column(project: &Project, spec: &ColumnSpec, points: &[Point]) -> Result<Fit, NoFit> {
+    if spec.family != Family::Declared {
+        return fit::fit(&spec.family, points, spec.weights).map_err(NoFit::Fit);
+    }
+    let declared = project.declared.as_ref().ok_or(NoFit::Undeclared)?;
+    let formula: Formula = declared.formula.parse().map_err(|e| NoFit::Formula(format!("{e}")))?;
+    fit::declared(&formula, points).map_err(NoFit::Fit)
+}
+
+/// The reason in words, with the reading it concerns.
+fn place(reason: &NoFit, project: &Project, observations: &[Observation], used: &[usize]) -> String {
+    let reading = |index: &usize| {
+        let o = &observations[*used.get(*index)?];
+        let id = o.readings.first()?;
+        let raw = project.reading(*id).map(|r| r.raw.to_string()).unwrap_or_default();
+        Some(format!("reading {} ({raw} at {})", id.0, words::plain(o.x)))
+    };
+    match reason {
+        NoFit::Undeclared => "no function is declared".to_owned(),
+        NoFit::Formula(e) => format!("the declared function cannot be read: {e}"),
+        NoFit::Fit(e) => {
+            let at = match e {
+                FitError::OutsideDomain { index, .. }
+                | FitError::Undefined { index, .. }
+                | FitError::NotFinite { index }
+                | FitError::BadWeight { index, .. } => reading(index),
+                FitError::TooFew { .. }
+                | FitError::OutOfRange
+                | FitError::TooClose { .. }
+                | FitError::DegreeTooHigh { .. }
+                | FitError::NotFitted => None,
+            };
+            match at {
+                Some(at) => format!("{at}: {}", words::fit_error(e)),
+                None => words::fit_error(e),
+            }
+        }
+    }
+}
+
+fn infer(project: &Project, fit: Fit, used: Vec<usize>, zeros_fitted: bool, zeros: &ZeroFacts) -> FitEvaluation {
+    let shape = shape(&fit);
+    let departure = departure(&fit, &shape);
+    let near_zero = near_zero::detection(project, &fit, zeros);
+    FitEvaluation {
+        coefficients: coefficients(project, &fit),
+        lack_of_fit: lack_of_fit(&fit),
+        residual_sd_input: input_size(&fit, fit.residual_sd),
+        level_out_rmse: departure.left_out.map(|l| l.output),
+        shape,
+        departure,
+        near_zero,
+        zeros_fitted,
+        used,
+        fit,
+    }
+}
+
+/// A size in the output unit as one in the input unit, by the mean slope over the standards.
+fn input_size(fit: &Fit, size: Option<f64>) -> Option<f64> {
+    let (low, high) = ends(fit)?;
+    let slope = (fit.curve.value(high) - fit.curve.value(low)) / (high - low);
+    size.map(|s| s / slope.abs()).filter(|s| s.is_finite())
+}
+
+/// Lowest and highest standard of a fit, input unit; `None` with one level.
+#[must_use]
+pub fn ends(fit: &Fit) -> Option<(f64, f64)> {
+    let low = fit.points.iter().map(|p| p.x).fold(f64::INFINITY, f64::min);
+    let high = fit.points.iter().map(|p| p.x).fold(f64::NEG_INFINITY, f64::max);
+    (low < high).then_some((low, high))
+}
+
+fn coefficients(project: &Project, fit: &Fit) -> Vec<Coefficient> {
+    let (y, x) = (&project.plan.output.unit, &project.plan.input.unit);
+    let u = fit.standard_uncertainties();
+    let nu = fit.degrees_of_freedom as f64;
+    let t = t_quantile(0.5 + project.plan.level / 2.0, nu);
+    fit.family
+        .coefficient_names()
+        .into_iter()
+        .enumerate()
+        .map(|(i, name)| {
+            let value = fit.coefficients[i];
+            let standard_uncertainty = u.as_ref().and_then(|u| u.get(i).copied());
+            Coefficient {
+                printed: fit.family.printed_coefficient(i),
+                unit: fit.family.coefficient_unit(i, y, x),
+                interval: standard_uncertainty.map(|u| (value - t * u, value + t * u)),
+                name,
+                value,
+                standard_uncertainty,
+            }
+        })
+        .collect()
+}
+
+fn captions(project: &Project, e: &FitEvaluation, zeros: &ZeroFacts) -> Captions {
+    let span = ends(&e.fit).map_or(0.0, |(low, high)| high - low);
+    let facts = ResidualFacts {
+        plan: &project.plan,
+        family: &e.fit.family,
+        departure: &e.departure,
+        rejected: e.shape.rejected(),
+        too_few: e.shape.too_few.is_some(),
+        degrees_of_freedom: e.fit.degrees_of_freedom,
+        expanded: words::worst(&e.departure).and_then(|w| expanded_at(project, &e.fit, w.x)),
+        span,
+    };
+    Captions {
+        curve: Caption::plain(curve_caption(project, e)),
+        residuals: words::residuals(&facts),
+        near_zero: near_zero::caption(project, e, zeros),
+    }
+}
+
+/// Half the prediction interval of one new reading at x as an input value: the size that matters there.
+#[must_use]
+pub fn expanded_at(project: &Project, fit: &Fit, x: f64) -> Option<f64> {
+    let at = Bands::new(fit, project.plan.level, 1)?.at(x)?;
+    Some(at.prediction / fit.curve.derivative(x).abs()).filter(|u| u.is_finite())
+}
+
+fn curve_caption(project: &Project, e: &FitEvaluation) -> String {
+    let unit = project.plan.input.unit.as_str();
+    match words::worst(&e.departure).and_then(|w| w.read_back_error) {
+        Some(error) => {
+            let size = crate::quantity::format::significant(error.abs(), 2);
+            format!("within {} of every standard", crate::quantity::format::with_unit(&size, unit))
+        }
+        None => "some standards cannot be read back".to_owned(),
+    }
+}
