@@ -1,0 +1,18 @@
+//! Benchmarks: `cargo bench -p assize-tests`. Nothing in a test depends on them.
+//!
+//! Medians on 2 shared cores (x86-64, no GPU), 2026-12-01, other work running: tension link 1.52 ms, photometer
+//! 3.75 ms, load cell 0.95 ms.
+
+use assize_core::project::evaluate::evaluate;
+use assize_tests::demos::{SHIPPED_SEED, named};
+
+fn main() {
+    divan::main();
+}
+
+/// Everything that is computed from a demo: target below 2 ms for the tension link.
+#[divan::bench(args = ["tension-link", "nitrate-photometer", "load-cell-nist"])]
+fn evaluate_demo(bencher: divan::Bencher<'_, '_>, name: &str) {
+    let demo = named(name, SHIPPED_SEED).expect("a demo of that name");
+    bencher.bench(|| evaluate(demo.document.project()));
+}
