@@ -1,8 +1,11 @@
 //! The command line as scripts and auditors call it: the program itself, started.
 
 mod bad_input;
+mod families;
+mod looks;
 mod main_job;
 mod numbers;
+mod published;
 
 use serde_json::Value;
 use std::{

@@ -1,3 +1,5 @@
-//! Shared pieces of the checks: the invented demonstration projects, made from seeds.
+//! Shared pieces of the checks: the invented demonstration projects, and simulations of known truth.
 
+pub mod advice;
+pub mod coverage;
 pub mod demos;

@@ -4,6 +4,7 @@ mod colours;
 mod dependencies;
 mod layers;
 mod names;
+mod sets;
 mod sizes;
 
 use std::{

@@ -40,7 +40,9 @@ fn long_functions(text: &str) -> Vec<(usize, usize)> {
         let indent = line.len() - line.trim_start().len();
         let head = line.trim_start();
         let is_fn = head.starts_with("fn ") || (head.starts_with("pub") && head.contains(" fn "));
-        if !is_fn {
+        // A method that a trait only asks for ends before any brace opens.
+        let first_sign = lines[start..].iter().find(|l| l.ends_with('{') || l.ends_with(';') || l.ends_with('}'));
+        if !is_fn || first_sign.is_some_and(|l| l.ends_with(';')) {
             continue;
         }
         let close = format!("{}}}", " ".repeat(indent));
@@ -56,4 +58,9 @@ fn long_functions(text: &str) -> Vec<(usize, usize)> {
 fn a_long_function_is_noticed() {
     let text = format!("fn short() {{\n}}\nfn long() {{\n{}}}\n", "    x();\n".repeat(70));
     assert_eq!(long_functions(&text), [(3, 72)]);
+    let asked = format!(
+        "trait T {{\n    fn asked(\n        &self,\n    ) -> u8;\n{}    fn given() {{\n    }}\n}}\n",
+        "    // x\n".repeat(70)
+    );
+    assert_eq!(long_functions(&asked), []);
 }

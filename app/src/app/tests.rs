@@ -322,3 +322,22 @@ fn a_record_is_completed_signed_and_checked() {
     window.click("Check it");
     window.wait_for("Altered: this file is not as it was signed");
 }
+
+#[test]
+fn columns_are_picked_by_keys_and_say_when_a_function_is_of_use() {
+    let mut window = Window::new();
+    window.paste(SIX);
+    window.key(Key::Enter);
+    window.keys(Modifiers::COMMAND, Key::M);
+    assert!(window.says("Columns to compare") && window.says("Function of column 3: Logarithm"));
+    window.click("Add a column");
+    assert!(window.says("Function of column 4: Cubic") && window.says("Weights of column 4: equal weights"));
+    let guide = assize_core::model::Family::Polynomial(3).guide();
+    assert!(window.says(&guide.when[..30]) && window.says(&guide.wrong[..30]));
+    window.click("Remove column 3");
+    window.click("Show these");
+    let columns = &window.app().session().evaluation().columns;
+    let heads: Vec<&str> = columns.iter().map(|c| c.head.as_str()).collect();
+    assert_eq!(heads, ["Line", "Quadratic", "Cubic"]);
+    assert_eq!(window.on_disk().project(), window.app().session().document().project());
+}

@@ -5,7 +5,7 @@ use crate::{
     command::Does,
     rooms::{Room, Wish},
     session::{KnownKey, Message, Session, Shelf, name_for},
-    shell::dialogs::{CopyTo, Dialog, Outcome, Palette, Projects},
+    shell::dialogs::{Columns, CopyTo, Dialog, Outcome, Palette, Projects},
 };
 use assize_core::{
     project::{command::Command, evaluate::Place},
@@ -27,6 +27,7 @@ impl App {
             Wish::Enter { command, because } => self.enter(command, because),
             Wish::Go(room, place) => self.go(room, place),
             Wish::Open(path) => self.open(&path, ctx),
+            Wish::PickColumns => self.carry_out(Does::Columns, ctx),
             Wish::StartOwn => self.start_own(),
             Wish::CopyTo(path) => self.copy_to(&path),
             Wish::Import { path, zeros } => self.import(&path, zeros),
@@ -110,6 +111,10 @@ impl App {
                 self.bench.ask_for_table();
             }
             Does::AtBench => self.ask_name(),
+            Does::Columns => {
+                self.room = Room::Compare;
+                self.dialog = Some(Dialog::Columns(Columns::new(self.session.project())));
+            }
             Does::SwitchTheme => self.switch_theme(ctx),
             Does::Find => self.dialog = Some(Dialog::Palette(Palette::default())),
         }
@@ -162,7 +167,7 @@ impl App {
                 self.bench.give_back();
             }
             Outcome::Name(name) => self.named(&name),
-            Outcome::Reasoned(wish) => self.waiting.push_front(wish),
+            Outcome::Reasoned(wish) | Outcome::Wished(wish) => self.waiting.push_front(wish),
             Outcome::DropTorn => self.drop_torn(),
             Outcome::Leave => {
                 self.leaving = true;

@@ -33,6 +33,8 @@ pub enum Does {
     Import,
     /// Says who is at the bench.
     AtBench,
+    /// Picks the columns of the comparison.
+    Columns,
     /// Light by day, dark by night.
     SwitchTheme,
     /// Lists the commands.
@@ -119,6 +121,12 @@ pub const TABLE: &[Entry] = &[
         name: "Who is at the bench…",
         hint: "Every entry carries the name of the person at the bench.",
         keys: &[],
+    },
+    Entry {
+        does: Does::Columns,
+        name: "Columns to compare…",
+        hint: "Picks up to six functions with their weights, and says when each is of use.",
+        keys: &[Keys::ctrl(Key::M)],
     },
     Entry {
         does: Does::SwitchTheme,

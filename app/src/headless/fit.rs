@@ -4,14 +4,15 @@ use super::{Failed, load, print};
 use assize_core::{
     exchange::fit_json,
     fit::Weights,
-    model::Family,
+    model::{Family, TypedFormula},
     project::{
-        columns::{ColumnSpec, Declared, first_columns},
+        columns::{Axes, ColumnSpec, Declared, first_columns},
         command::{ColumnsCommand, Command, PlanCommand, PlanField},
         evaluate::{Evaluation, evaluate},
         plan::DetectionQuestion,
     },
     quantity::Text,
+    readings::Stage,
     trail::Document,
 };
 use clap::Args;
@@ -22,15 +23,32 @@ use std::path::PathBuf;
 pub struct Options {
     /// A table or a project.
     data: PathBuf,
-    /// A function: line, quadratic, cubic, polynomial:N, log, declared. May be repeated.
+    /// A function: line, line-zero, one-point, quadratic, cubic, polynomial:N, log, power, exponential,
+    /// hyperbola, rational, logistic4, logistic5, steinhart-hart, beta, callendar-van-dusen, formula,
+    /// declared. May be repeated.
     #[arg(long)]
     family: Vec<String>,
     /// A function with its weights, e.g. line@1/x2. May be repeated.
     #[arg(long)]
     fit: Vec<String>,
-    /// Weights of every --family: equal, 1/x, 1/x2, 1/y, 1/y2.
+    /// Weights of every --family: equal, replicates, typed, 1/x, 1/x2, 1/y, 1/y2, 1/s2, fitted.
     #[arg(long, default_value = "equal")]
     weights: String,
+    /// Takes the errors of the standards into the fit of every column.
+    #[arg(long)]
+    both_axes: bool,
+    /// The formula of the family `formula`, e.g. "b1*(1-exp(-b2*x))".
+    #[arg(long)]
+    formula: Option<String>,
+    /// Start values of its coefficients, e.g. b1=500,b2=1e-4.
+    #[arg(long)]
+    start: Option<String>,
+    /// The stage to fit: as-found, as-left, check.
+    #[arg(long)]
+    stage: Option<String>,
+    /// Relative standard uncertainty at the quantification limit.
+    #[arg(long)]
+    target: Option<f64>,
     /// A table of zero readings.
     #[arg(long)]
     zeros: Option<PathBuf>,
@@ -101,6 +119,7 @@ fn ask(document: &mut Document, options: &Options) -> Result<(), Failed> {
         alpha: options.alpha.unwrap_or(old.alpha),
         beta: options.beta.unwrap_or(old.beta),
         k: options.future_k.unwrap_or(old.k),
+        target: options.target.unwrap_or(old.target),
         ..old
     };
     if question != old {
@@ -110,6 +129,9 @@ fn ask(document: &mut Document, options: &Options) -> Result<(), Failed> {
         let formula = Text::from(formula.as_str());
         Command::Columns(ColumnsCommand::Declare(Declared { formula, origin: Text::from("command line") }))
     }));
+    if let Some(text) = &options.stage {
+        commands.push(Command::Columns(ColumnsCommand::Stage(Some(stage(text)?))));
+    }
     let mut columns = columns(options)?;
     if columns.is_empty() && document.project().columns.is_empty() && options.declared.is_some() {
         columns = first_columns();
@@ -128,20 +150,48 @@ fn columns(options: &Options) -> Result<Vec<ColumnSpec>, Failed> {
     let weights: Weights = options.weights.parse()?;
     let mut columns: Vec<ColumnSpec> = Vec::new();
     for name in &options.family {
-        columns.push(ColumnSpec { weights, ..ColumnSpec::plain(name.parse()?) });
+        columns.push(ColumnSpec { weights, ..ColumnSpec::plain(family(name, options)?) });
     }
     for text in &options.fit {
         columns.push(column(text)?);
     }
-    if columns.is_empty() && weights != Weights::Equal {
+    if columns.is_empty() && options.formula.is_some() {
+        columns.push(ColumnSpec { weights, ..ColumnSpec::plain(family("formula", options)?) });
+    }
+    if columns.is_empty() && (weights != Weights::Equal || options.both_axes) {
         columns = first_columns().into_iter().map(|c| ColumnSpec { weights, ..c }).collect();
+    }
+    if options.both_axes {
+        for column in columns.iter_mut().filter(|c| c.family != Family::Declared) {
+            column.axes = Axes::Both;
+        }
     }
     Ok(columns)
 }
 
+/// A family by its name; `formula` takes its expression and start values from their own options.
+fn family(name: &str, options: &Options) -> Result<Family, Failed> {
+    if name != "formula" {
+        return Ok(name.parse()?);
+    }
+    let Some(expression) = &options.formula else {
+        return Err(Failed::Wrong("--family formula needs --formula, e.g. --formula \"b1*(1-exp(-b2*x))\"".to_owned()));
+    };
+    Ok(Family::Formula(TypedFormula::new(expression, options.start.as_deref().unwrap_or_default())?))
+}
+
+fn stage(text: &str) -> Result<Stage, Failed> {
+    match text {
+        "as-found" => Ok(Stage::AsFound),
+        "as-left" => Ok(Stage::AsLeft),
+        "check" => Ok(Stage::Check),
+        _ => Err(Failed::Wrong(format!("--stage {text:?}: as-found, as-left or check would be accepted"))),
+    }
+}
+
 /// `F@W`, or `F` with equal weights.
 pub(super) fn column(text: &str) -> Result<ColumnSpec, Failed> {
-    let (family, weights) = text.split_once('@').unwrap_or((text, "equal"));
+    let (family, weights) = text.rsplit_once('@').unwrap_or((text, "equal"));
     Ok(ColumnSpec { weights: weights.parse()?, ..ColumnSpec::plain(family.parse()?) })
 }
 

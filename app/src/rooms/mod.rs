@@ -78,6 +78,8 @@ pub enum Wish {
     Go(Room, Option<Place>),
     /// Opens a project, a table or a PDF.
     Open(PathBuf),
+    /// Picks the columns of the comparison.
+    PickColumns,
     /// Starts an empty project.
     StartOwn,
     /// A copy of the project file.

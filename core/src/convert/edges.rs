@@ -6,28 +6,69 @@
 //! neighbours each is then monotone, and a reading needs comparisons and a few refined roots only.
 
 use super::root::{extreme, refined};
-use crate::fit::Fit;
-use crate::model::Family;
+use crate::fit::{Fit, Variances, two_sided};
 
-/// Half-width of the band as a function of x: q·√(a·v(x) + b·Var f̂(x)).
+/// Half-width of the band as a function of x.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub(crate) struct Width {
-    /// Coverage factor.
-    pub q: f64,
-    /// Variance of the mean of the new readings where v = 1, output unit squared.
-    pub new: f64,
-    /// Factor on Var f̂(x).
-    pub curve: f64,
+pub(crate) enum Width {
+    /// Nothing is known of the scatter: no width.
+    Unknown,
+    /// As the fit knows it, for the mean of k new readings, at this level.
+    Own {
+        /// How many new readings are averaged.
+        k: usize,
+        /// E.g. 0.95.
+        level: f64,
+        /// The factor where the standards add nothing.
+        plain: f64,
+    },
+    /// The new readings bring a scatter of their own: q·√(a·v(x) + b·Var f̂(x) + standards' part).
+    Given {
+        /// Variance of the mean of the new readings where v = 1, output unit squared.
+        new: f64,
+        /// Factor on the scatter's part of Var f̂(x).
+        curve: f64,
+        /// Degrees of freedom of the scatter.
+        freedom: f64,
+        /// E.g. 0.95.
+        level: f64,
+        /// The factor where the standards add nothing.
+        plain: f64,
+    },
 }
 
 impl Width {
-    /// w(x), output unit.
-    pub(crate) fn at(&self, fit: &Fit, x: f64) -> f64 {
-        if self.q == 0.0 {
-            // Nothing is known of the scatter.
-            return 0.0;
+    /// The variances at x; `None` when nothing is known.
+    pub(crate) fn variances(self, fit: &Fit, x: f64) -> Option<Variances> {
+        match self {
+            Self::Unknown => None,
+            Self::Own { k, .. } => fit.variances(x, k),
+            Self::Given { new, curve, freedom, .. } => {
+                let own = fit.variances(x, 1)?;
+                Some(Variances { new: new * fit.variance_at(x), curve: curve * own.curve, freedom, ..own })
+            }
         }
-        self.q * libm::sqrt(self.new * fit.variance_at(x) + self.curve * fit.mean_variance(x))
+    }
+
+    /// w(x), output unit.
+    pub(crate) fn at(self, fit: &Fit, x: f64) -> f64 {
+        self.variances(fit, x).map_or(0.0, |v| self.factor_of(v) * libm::sqrt(v.total()))
+    }
+
+    /// The coverage factor for these variances. Student's quantile is dear: it is found anew only where the
+    /// standards have a part.
+    fn factor_of(self, v: Variances) -> f64 {
+        match self {
+            Self::Unknown => 0.0,
+            Self::Own { plain, .. } | Self::Given { plain, .. } if v.standards == 0.0 => plain,
+            Self::Own { level, .. } | Self::Given { level, .. } => two_sided(level, v.effective_freedom()),
+        }
+    }
+
+    /// The coverage factor at x and the degrees of freedom behind it.
+    pub(crate) fn factor(self, fit: &Fit, x: f64) -> Option<(f64, f64)> {
+        let v = self.variances(fit, x)?;
+        Some((self.factor_of(v), v.effective_freedom()))
     }
 }
 
@@ -73,6 +114,11 @@ impl Edges {
         Self { nodes, turns, width }
     }
 
+    /// Whether the table begins at zero because the family has no value below.
+    pub(crate) fn begins_at_zero(&self, fit: &Fit) -> bool {
+        fit.family.logarithmic() && self.nodes.first().is_some_and(|n| n.x == 0.0)
+    }
+
     /// The same places with another width.
     pub(crate) fn with_width(&self, fit: &Fit, width: Width) -> Self {
         let nodes = self.nodes.iter().map(|node| {
@@ -99,13 +145,15 @@ impl Edges {
     }
 }
 
-/// Where to tabulate, ascending: dense over the range and a tenth beyond, then geometric.
+/// Where to tabulate, ascending: dense over the range and a tenth beyond, then geometric; even in ln x for
+/// families whose domain begins at zero.
 fn places(fit: &Fit, (low, high): (f64, f64)) -> Vec<f64> {
     const DENSE: i32 = 64;
     const SPARSE: i32 = 48;
     const REACH: f64 = 1.1;
-    let logarithmic = fit.family == Family::Log;
-    let (a, b) = if logarithmic { (libm::log(low), libm::log(high)) } else { (low, high) };
+    let lowest_above_zero = fit.points.iter().map(|p| p.x).filter(|x| *x > 0.0).fold(f64::INFINITY, f64::min);
+    let logarithmic = fit.family.logarithmic() && lowest_above_zero.is_finite();
+    let (a, b) = if logarithmic { (libm::log(lowest_above_zero), libm::log(high)) } else { (low, high) };
     let centre = 0.5 * (a + b);
     let half = if b > a { 0.5 * (b - a) } else { centre.abs().max(1.0) };
     let inner = (-DENSE..=DENSE).map(|i| REACH * f64::from(i) / f64::from(DENSE));
@@ -117,9 +165,23 @@ fn places(fit: &Fit, (low, high): (f64, f64)) -> Vec<f64> {
         if logarithmic { libm::exp(abscissa) } else { abscissa }
     };
     let mut places: Vec<f64> = steps.into_iter().map(place).filter(|x| x.is_finite()).collect();
-    // exp underflows to 0, where the logarithm has no value.
-    places.retain(|x| !logarithmic || *x > 0.0);
+    if logarithmic {
+        // exp underflows to 0, where a curve may have a value or not: one place for it.
+        places.retain(|x| *x > 0.0);
+        if fit.curve.has_value_at(0.0) {
+            places.insert(0, 0.0);
+        }
+    }
     places.dedup();
+    between_poles(fit, places, (low, high))
+}
+
+/// The places on the stretch around the range that no pole interrupts.
+fn between_poles(fit: &Fit, mut places: Vec<f64>, (low, high): (f64, f64)) -> Vec<f64> {
+    let middle = 0.5 * (low + high);
+    for pole in fit.curve.poles() {
+        places.retain(|x| (*x < pole) == (middle < pole) && *x != pole);
+    }
     places
 }
 

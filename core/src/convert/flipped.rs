@@ -30,6 +30,18 @@ impl Flipped {
             Family::Declared => return None,
             Family::Polynomial(degree) => (Family::Polynomial(*degree), false),
             Family::Log => (Family::Polynomial(1), true),
+            // Families bent in their coefficients have no flipped twin; thermistors are fitted flipped already.
+            Family::Power
+            | Family::Exponential
+            | Family::Hyperbola
+            | Family::Rational
+            | Family::Logistic4
+            | Family::Logistic5
+            | Family::SteinhartHart
+            | Family::Beta
+            | Family::CallendarVanDusen
+            | Family::Formula(_) => return None,
+            Family::LineThroughZero | Family::OnePoint => (Family::LineThroughZero, false),
         };
         let points: Vec<Point> = forward
             .points
@@ -42,6 +54,8 @@ impl Flipped {
             (_, Weights::InverseX2) => Weights::InverseY2,
             (_, Weights::InverseY) => Weights::InverseX,
             (_, Weights::InverseY2) => Weights::InverseX2,
+            // Weights that come from the scatter of the readings have no counterpart on the other axis.
+            _ => Weights::Equal,
         };
         let fitted = fit::fit(&family, &points, weights).ok()?;
         Some(Self { curve: fitted.curve, logarithmic })

@@ -1,9 +1,14 @@
 //! Readings to values: the inverted calibration function and its interval.
 
+pub mod digits;
 #[cfg(test)]
 mod edge_tests;
 mod edges;
+#[cfg(test)]
+mod families_tests;
 pub mod flipped;
+#[cfg(test)]
+mod kinds_tests;
 #[cfg(test)]
 pub(crate) mod reference;
 mod repeats;
@@ -17,8 +22,7 @@ pub use repeats::Repeats;
 pub use root::root_near;
 pub use set::{EndState, Piece};
 
-use crate::distributions::t_quantile;
-use crate::fit::Fit;
+use crate::fit::{Fit, two_sided};
 use edges::{Edges, Width};
 use flipped::Flipped;
 
@@ -93,9 +97,11 @@ impl<'a> Converter<'a> {
     /// Prepares a fit; `None` when it has no points, or its curve no value in their middle.
     ///
     /// # Formula
-    /// The interval is {x : |y₀ − f̂(x)| ≤ q·√(s²·v(x)/k + Var f̂(x))}, q = t_{(1+level)/2, ν}, taken
-    /// whole: the variance of the new readings at the candidate x, not cut at the range. For a line
-    /// this is Fieller's interval. u(x₀) = √(s²v(x₀)/k + Var f̂(x₀))/|f̂′(x₀)|.
+    /// The interval is {x : |y₀ − f̂(x)| ≤ q·√(σ²·v(x)/k + Var f̂(x) + v_std(x))}, taken whole: all
+    /// variances at the candidate x, not cut at the range. For a line this is Fieller's interval. The three
+    /// parts are those of [`Fit::variances`]; q is Student's factor with the effective degrees of freedom
+    /// ν·(total)²/(part from the scatter)², the normal one where the scatter is known.
+    /// u(x₀) = √(total)/|f̂′(x₀)|.
     ///
     /// # Shapes and units
     /// `k` ≥ 1: how many readings each number handed in is the mean of. `level`: e.g. 0.95.
@@ -110,20 +116,18 @@ impl<'a> Converter<'a> {
         }
         let xs = || fit.points.iter().map(|p| p.x);
         let range = (xs().fold(f64::INFINITY, f64::min), xs().fold(f64::NEG_INFINITY, f64::max));
-        let width = match fit.residual_sd {
-            Some(s) => Width {
-                q: t_quantile(0.5 * (1.0 + level), fit.degrees_of_freedom as f64),
-                new: s * s / k as f64,
-                curve: 1.0,
-            },
-            None => Width { q: 0.0, new: 0.0, curve: 0.0 },
+        let width = if fit.scatter_sd().is_some() {
+            Width::Own { k, level, plain: fit.coverage_factor(level) }
+        } else {
+            Width::Unknown
         };
         let edges = Edges::new(fit, range, width);
         if edges.nodes.is_empty() {
             return None;
         }
         let margin = |x: f64| {
-            let d = width.q * libm::sqrt(width.new * fit.variance_at(x)) / fit.curve.derivative(x).abs();
+            let d = width.variances(fit, x).map_or(0.0, |v| two_sided(level, v.freedom) * libm::sqrt(v.new));
+            let d = d / fit.curve.derivative(x).abs();
             if d.is_finite() { d } else { 0.0 }
         };
         Some(Self {
@@ -149,37 +153,21 @@ impl<'a> Converter<'a> {
     /// As [`Converter::new`].
     #[must_use]
     pub fn convert(&self, reading: f64) -> Conversion {
-        self.by(reading, &self.edges, self.fit.residual_sd.map(|_| self.fit.degrees_of_freedom as f64))
-    }
-
-    /// Largest |flipped − inverted| over the range, in units of u(x) and in the input unit.
-    #[must_use]
-    pub fn flipped_difference(&self) -> Option<FlippedDifference> {
-        let flipped = self.flipped.as_ref()?;
-        let inside = |x: f64| x >= self.range.0 && x <= self.range.1;
-        let mut worst: Option<FlippedDifference> = None;
-        for node in self.edges.nodes.iter().filter(|node| inside(node.x)) {
-            let difference = flipped.value(node.value)? - node.x;
-            let u = self.uncertainty(node.x, self.edges.width)?;
-            let relative = (difference / u).abs();
-            if worst.is_none_or(|w| relative > w.relative) {
-                worst = Some(FlippedDifference { relative, difference, at: node.x });
-            }
-        }
-        worst
+        self.by(reading, &self.edges)
     }
 
     /// u(x), input unit, without the coverage factor.
     fn uncertainty(&self, x: f64, width: Width) -> Option<f64> {
-        let u = Width { q: 1.0, ..width }.at(self.fit, x) / self.fit.curve.derivative(x).abs();
-        (u.is_finite() && self.fit.residual_sd.is_some()).then_some(u)
+        let u = libm::sqrt(width.variances(self.fit, x)?.total()) / self.fit.curve.derivative(x).abs();
+        u.is_finite().then_some(u)
     }
 
-    fn by(&self, reading: f64, edges: &Edges, nu: Option<f64>) -> Conversion {
+    fn by(&self, reading: f64, edges: &Edges) -> Conversion {
         let branch = self.branch();
         let candidates = self.candidates(reading, edges, branch);
         let value = self.single(&candidates);
-        let pieces = if nu.is_some() {
+        let known = edges.width != Width::Unknown;
+        let pieces = if known {
             self.concerning(set::pieces(edges, self.fit, reading), edges, reading, branch, &candidates)
         } else {
             Vec::new()
@@ -188,6 +176,8 @@ impl<'a> Converter<'a> {
             Some(x) => pieces.iter().find(|piece| piece.contains(x)).copied(),
             None => pieces.first().copied().filter(|_| pieces.len() == 1),
         };
+        let middle = 0.5 * (self.range.0 + self.range.1);
+        let factor = edges.width.factor(self.fit, value.unwrap_or(middle));
         let end = |bound: Option<f64>| bound.map_or(EndState::Unbounded, |_| EndState::Finite);
         let bounded = own.is_some_and(|piece| piece.low.is_some() && piece.high.is_some());
         Conversion {
@@ -201,8 +191,8 @@ impl<'a> Converter<'a> {
             state: self.state(value, &candidates, own, pieces.len()),
             pieces,
             candidates,
-            degrees_of_freedom: nu,
-            coverage_factor: nu.map(|_| edges.width.q),
+            degrees_of_freedom: factor.map(|(_, freedom)| freedom),
+            coverage_factor: factor.map(|(q, _)| q),
             flipped_value: self.flipped.as_ref().and_then(|flipped| flipped.value(reading)),
             scatters_more: None,
         }
@@ -218,4 +208,30 @@ pub struct FlippedDifference {
     pub difference: f64,
     /// Where, input unit.
     pub at: f64,
+}
+
+/// Largest |flipped − inverted| over the range of the standards, one new reading.
+///
+/// # Formula
+/// max |g(f̂(x)) − x|/u(x) at 65 places even over the range, g the flipped fit, u(x) = √(variances)/|f̂′(x)|.
+///
+/// # Shapes and units
+/// As [`FlippedDifference`]; `None` without a flipped fit or a known scatter.
+///
+/// # Source
+/// Definition of this program.
+#[must_use]
+pub fn flipped_difference(fit: &Fit) -> Option<FlippedDifference> {
+    const STEPS: u32 = 64;
+    let flipped = Flipped::new(fit)?;
+    let low = fit.points.iter().map(|p| p.x).fold(f64::INFINITY, f64::min);
+    let high = fit.points.iter().map(|p| p.x).fold(f64::NEG_INFINITY, f64::max);
+    let at = |x: f64| {
+        let difference = flipped.value(fit.curve.value(x))? - x;
+        let u = libm::sqrt(fit.variances(x, 1)?.total()) / fit.curve.derivative(x).abs();
+        let relative = (difference / u).abs();
+        relative.is_finite().then_some(FlippedDifference { relative, difference, at: x })
+    };
+    let places = (0..=STEPS).map(|i| low + (high - low) * f64::from(i) / f64::from(STEPS));
+    places.filter_map(at).max_by(|a, b| a.relative.total_cmp(&b.relative))
 }

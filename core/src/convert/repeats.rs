@@ -2,7 +2,8 @@
 
 use super::edges::Width;
 use super::{Conversion, Converter};
-use crate::distributions::{f_upper, t_quantile};
+use crate::distributions::{chi2_upper, f_upper};
+use crate::fit::two_sided;
 
 /// The scatter of the k readings behind one mean.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -29,27 +30,38 @@ impl Converter<'_> {
     #[must_use]
     pub fn convert_repeats(&self, reading: f64, repeats: Repeats) -> Conversion {
         let plain = self.convert(reading);
-        let (Some(s), true) = (self.fit.residual_sd, self.k > 1 && repeats.sd.is_finite()) else {
+        let (Some(s), true) = (self.fit.scatter_sd(), self.k > 1 && repeats.sd.is_finite()) else {
             return plain;
         };
-        let x = plain.value.unwrap_or(0.5 * (self.range.0 + self.range.1));
-        let (nu, own_nu) = (self.fit.degrees_of_freedom as f64, (self.k - 1) as f64);
+        let x = self.place(&plain);
+        let (nu, own_nu) = (self.fit.scatter_freedom(), (self.k - 1) as f64);
+        if nu.is_infinite() {
+            // A scatter that is known needs no help from the repeats.
+            let more = repeats.sd * repeats.sd / (s * s * self.fit.variance_at(self.place(&plain)));
+            let more = chi2_upper(more * own_nu, own_nu) < 0.05;
+            return Conversion { scatters_more: Some(more), ..plain };
+        }
         let k = self.k as f64;
         let (s2, own) = (s * s, repeats.sd * repeats.sd / self.fit.variance_at(x));
         let more = own > s2 && f_upper(own / s2, own_nu, nu) < 0.05;
-        let half = 0.5 * (1.0 + self.level);
-        let (width, nu) = if more && self.k >= 4 {
+        let level = self.level;
+        let width = if more && self.k >= 4 {
             let a = own / k * self.fit.variance_at(x);
             let b = self.fit.mean_variance(x);
-            let nu = (a + b) * (a + b) / (a * a / own_nu + b * b / nu);
-            (Width { q: t_quantile(half, nu), new: own / k, curve: 1.0 }, nu)
+            let freedom = (a + b) * (a + b) / (a * a / own_nu + b * b / nu);
+            Width::Given { new: own / k, curve: 1.0, freedom, level, plain: two_sided(level, freedom) }
         } else {
             let pooled = (nu * s2 + own_nu * own) / (nu + own_nu);
             let curve = if s2 > 0.0 { pooled / s2 } else { 1.0 };
-            let nu = nu + own_nu;
-            (Width { q: t_quantile(half, nu), new: pooled / k, curve }, nu)
+            let freedom = nu + own_nu;
+            Width::Given { new: pooled / k, curve, freedom, level, plain: two_sided(level, freedom) }
         };
         let edges = self.edges.with_width(self.fit, width);
-        Conversion { scatters_more: Some(more), ..self.by(reading, &edges, Some(nu)) }
+        Conversion { scatters_more: Some(more), ..self.by(reading, &edges) }
+    }
+
+    /// Where to judge the scatter: at the value, else in the middle of the range.
+    fn place(&self, conversion: &Conversion) -> f64 {
+        conversion.value.unwrap_or(0.5 * (self.range.0 + self.range.1))
     }
 }

@@ -57,10 +57,13 @@ impl Converter<'_> {
         let single = self.single(candidates);
         let meant = |x: f64| single.map_or(candidates.contains(&x), |value| value == x);
         let roots = edges.roots(self.fit, reading);
+        // Far outside, the first-order variance of a curve bent in its coefficients grows without meaning.
+        let first_order = self.fit.effort.is_some();
         let wanted = |piece: &Piece| {
             let mut own = roots.iter().copied().filter(|x| piece.contains(*x)).peekable();
             let other_only = own.peek().is_some() && !own.any(meant);
-            piece.meets(low, high) || (piece.meets(branch.0, branch.1) && !other_only)
+            let second = !first_order && piece.meets(branch.0, branch.1) && !other_only;
+            piece.meets(low, high) || single.is_some_and(|x| piece.contains(x)) || second
         };
         pieces.into_iter().filter(wanted).collect()
     }
@@ -78,10 +81,10 @@ impl Converter<'_> {
         if own.is_some_and(|piece| piece.low.is_none() || piece.high.is_none()) {
             return State::Unbounded;
         }
-        self.place(x)
+        self.place_of(x)
     }
 
-    fn place(&self, x: f64) -> State {
+    fn place_of(&self, x: f64) -> State {
         let (low, high) = self.range;
         if x >= low - self.margin.0 && x <= high + self.margin.1 {
             State::InRange

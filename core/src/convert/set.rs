@@ -52,7 +52,8 @@ pub(crate) fn pieces(edges: &Edges, fit: &Fit, y: f64) -> Vec<Piece> {
     };
     let mut before = side(first, y);
     if before == 0 {
-        open = Some(None);
+        // Where the domain itself begins, the set ends there.
+        open = Some(edges.begins_at_zero(fit).then_some(0.0));
     }
     for pair in edges.nodes.windows(2) {
         let after = side(&pair[1], y);

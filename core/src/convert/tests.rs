@@ -198,7 +198,7 @@ fn the_flipped_line_meets_the_inverted_one_at_the_means() {
     assert!((at_mean.value.unwrap() - 4.0).abs() < 1e-12);
     let above = converter.convert(mean + 4.0);
     assert!(above.flipped_value.unwrap() < above.value.unwrap());
-    let worst = converter.flipped_difference().unwrap();
+    let worst = flipped_difference(converter.fit).unwrap();
     assert!(worst.relative > 0.0 && (worst.at == 1.0 || worst.at == 7.0 || worst.at.abs() < 8.0));
 }
 

@@ -173,3 +173,14 @@ proptest! {
         let _ = (f_upper(t, nu, delta), normal_quantile(p));
     }
 }
+
+/// Above 1000 degrees of freedom the quantile comes from an expansion: its tail must still be the one asked for.
+#[test]
+fn far_quantiles_of_t_lead_back_to_their_tail() {
+    for nu in [1000.5, 2000.0, 40_000.0, 3e6] {
+        for p in [1e-8, 1e-3, 0.025, 0.05, 0.3, 0.975] {
+            let back = t_lower(t_quantile(p, nu), nu);
+            assert!((back / p - 1.0).abs() < 1e-9, "{nu} {p}: {back}");
+        }
+    }
+}

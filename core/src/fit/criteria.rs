@@ -2,28 +2,42 @@
 
 use super::Fit;
 use crate::numerics::scale::as_f64;
+use crate::numerics::sums::determination;
 
 impl Fit {
-    /// R² = 1 − Σwe²/Σw(y − ȳ_w)², about the weighted mean.
+    /// R² = 1 − Σwe²/Σw(y − ȳ_w)², about the weighted mean where the function has a constant term, and
+    /// 1 − Σwe²/Σwy² where it has none ([`Fit::has_constant`] tells which).
     ///
     /// # Errors
     ///
-    /// `None` for declared, and when all indications are equal.
+    /// `None` for declared, and when all indications are equal (without a constant term: zero).
+    ///
+    /// # Source
+    ///
+    /// As [`determination`].
     #[must_use]
     pub fn r_squared(&self) -> Option<f64> {
         self.basis.as_ref()?;
-        // Scaled, so that squares of very large or small indications stay inside the range.
-        let largest = self.points.iter().fold(0.0, |top: f64, p| top.max(p.y.abs()));
-        let smallest_v = self.variance_ratio.iter().copied().fold(f64::INFINITY, f64::min);
-        let weight: Vec<f64> = self.variance_ratio.iter().map(|v| smallest_v / v).collect();
-        let total: f64 = weight.iter().sum();
-        let scaled: Vec<f64> = self.points.iter().map(|p| p.y / largest).collect();
-        let mean = scaled.iter().zip(&weight).map(|(y, w)| w * y).sum::<f64>() / total;
-        let spread = |y: &f64, w: &f64| w * (y - mean) * (y - mean);
-        let about_mean: f64 = scaled.iter().zip(&weight).map(|(y, w)| spread(y, w)).sum();
-        let left = |e: &f64, w: &f64| w * (e / largest) * (e / largest);
-        let residual: f64 = self.residuals.iter().zip(&weight).map(|(e, w)| left(e, w)).sum();
-        (about_mean > 0.0).then(|| 1.0 - residual / about_mean)
+        let y: Vec<f64> = self.points.iter().map(|p| p.y).collect();
+        determination(&y, &self.residuals, &self.variance_ratio, self.has_constant())
+    }
+
+    /// Whether adding a constant to all indications only moves the coefficients: not so for a line through
+    /// zero, whose R² is then about zero and not comparable with the others'.
+    ///
+    /// # Formula
+    ///
+    /// √w, the constant in whitened rows, lies in the span of the orthonormal columns: its part outside is
+    /// below a billionth of its square.
+    #[must_use]
+    pub fn has_constant(&self) -> bool {
+        let roots: Vec<f64> = self.variance_ratio.iter().map(|v| 1.0 / libm::sqrt(*v)).collect();
+        // Scaled, so that squares of very large or small weights stay inside the range.
+        let largest = roots.iter().copied().fold(0.0, f64::max);
+        let whole: f64 = roots.iter().map(|r| (r / largest) * (r / largest)).sum();
+        let along = |column: &Vec<f64>| -> f64 { column.iter().zip(&roots).map(|(q, r)| q * (r / largest)).sum() };
+        let inside: f64 = self.orthonormal.iter().map(|column| along(column) * along(column)).sum();
+        whole - inside < 1e-9 * whole
     }
 
     /// −2 ln L at the maximum: N ln(2π Σwe²/N) + N − Σ ln w, normal errors with variance σ²/w.

@@ -98,10 +98,11 @@ impl Fit {
         rmse.is_finite().then_some(rmse)
     }
 
-    /// Standard uncertainties of the coefficients, in their units; `None` with ν = 0, empty for declared.
+    /// Standard uncertainties of the coefficients, in their units; `None` while σ is not known, empty
+    /// for declared.
     #[must_use]
     pub fn standard_uncertainties(&self) -> Option<&[f64]> {
-        self.residual_sd.map(|_| self.uncertainties.as_slice())
+        self.scatter_sd().map(|_| self.uncertainties.as_slice())
     }
 
     /// Condition of the design in powers of the user's x (or 1, ln x), its columns brought to length one:

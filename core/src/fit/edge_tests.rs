@@ -80,7 +80,7 @@ fn values_that_are_not_finite_are_named() {
 fn the_logarithm_of_zero_or_less_is_an_error_that_names_the_row() {
     for x in [0.0, -3.0] {
         let found = fit(&Family::Log, &points(&[(1.0, 1.0), (x, 2.0), (3.0, 3.0)]), Weights::Equal);
-        assert_eq!(found, Err(FitError::OutsideDomain { index: 1, x }));
+        assert_eq!(found, Err(FitError::OutsideDomain { what: "the logarithm of", index: 1, x }));
     }
 }
 

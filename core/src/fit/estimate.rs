@@ -1,21 +1,56 @@
 //! Estimation: checks first, then least squares in double-double, rounded once.
 
-use super::{Fit, FitError, Point, Weights, variance};
-use crate::model::{Curve, Family, Formula, HIGHEST_DEGREE};
+use super::variance::{Prepared, VarianceModel};
+use super::{Fit, FitError, Point, Scatter, Weights, nonlinear, power, repeats, variance};
+use crate::model::{Centred, Curve, Family, Formula, HIGHEST_DEGREE, Units};
 use crate::numerics::Dd;
 use crate::numerics::householder::fit_columns;
 use crate::numerics::least_squares::{LeastSquares, ScaledWeights, SolveError};
-use crate::numerics::orthogonal::fit_polynomial;
+use crate::numerics::orthogonal::{CentredPolynomial, fit_centred};
 use crate::numerics::scale::{Scaled, as_f64};
+
+/// Everything a fit is made from.
+#[derive(Debug, Clone, Copy)]
+pub struct Request<'a> {
+    /// The family.
+    pub family: &'a Family,
+    /// The observations.
+    pub points: &'a [Point],
+    /// The weights.
+    pub weights: Weights,
+    /// Standard uncertainty of every observation, output unit, for the weights `typed`; not a number where
+    /// one has none.
+    pub reading_uncertainty: Option<&'a [f64]>,
+    /// What thermometer families need to know about the units.
+    pub units: Units,
+}
+
+impl<'a> Request<'a> {
+    /// Kelvin and ohm, no uncertainties of the readings.
+    #[must_use]
+    pub fn new(family: &'a Family, points: &'a [Point], weights: Weights) -> Self {
+        Self { family, points, weights, reading_uncertainty: None, units: Units::default() }
+    }
+}
+
+/// [`estimate`] for weights that need nothing but the points.
+///
+/// # Errors
+///
+/// As [`estimate`].
+pub fn fit(family: &Family, points: &[Point], weights: Weights) -> Result<Fit, FitError> {
+    estimate(&Request::new(family, points, weights))
+}
 
 /// Fits a family to observations by weighted least squares.
 ///
 /// # Formula
 ///
-/// β minimises Σ w_i (y_i − f(x_i; β))², w = 1/v; Cov β = s²(XᵀWX)⁻¹ with s² = Σwe²/ν, ν = N − p.
-/// Polynomials by orthogonal polynomials, the logarithm by Householder reflections, both in
-/// double-double up to the one rounding at the end. The points are taken in ascending order, so that the
-/// same readings give the same bits in whatever order they come.
+/// β minimises Σ w_i (y_i − f(x_i; β))², w = 1/v; Cov β = σ²(XᵀWX)⁻¹. With relative weights σ² is
+/// s² = Σwe²/ν, ν = N − p; with weights from repeats the pooled variance of all repeats; with absolute
+/// weights 1. Polynomials by orthogonal polynomials, other linear families by Householder reflections, all
+/// in double-double up to the one rounding at the end. The points are taken in ascending order, so that
+/// the same readings give the same bits in whatever order they come.
 ///
 /// # Shapes and units
 ///
@@ -29,27 +64,82 @@ use crate::numerics::scale::{Scaled, as_f64};
 ///
 /// Any text on linear regression; checked against the linear sets of the NIST/ITL Statistical Reference
 /// Datasets and JCGM 100:2008 H.3.
-pub fn fit(family: &Family, points: &[Point], weights: Weights) -> Result<Fit, FitError> {
+pub fn estimate(request: &Request) -> Result<Fit, FitError> {
+    let Request { family, points, weights, .. } = *request;
     check(family, points)?;
     let order = ascending(points);
     check_levels(family, points, &order)?;
-    let (scaled, variance_ratio) = variance::prepare(points, weights)?;
+    let prepared = variance::prepare(points, weights, request.reading_uncertainty)?;
+    let fit = weighted(request, &order, prepared)?;
+    match (weights, request.reading_uncertainty) {
+        (Weights::Fitted, _) => power::follow(request, &order, fit),
+        (Weights::Typed, Some(u)) if family.fitted_in_measurand() => {
+            let mut fit = fit;
+            // The slope that carries u to the measurand hardly changes with the weights.
+            for _ in 0..ROUNDS_OF_SLOPE {
+                fit = weighted(request, &order, nonlinear::typed_in_measurand(&fit, u)?)?;
+            }
+            Ok(fit)
+        }
+        _ => Ok(fit),
+    }
+}
+
+/// Rounds in which typed uncertainties of a resistance become those of a temperature.
+const ROUNDS_OF_SLOPE: usize = 3;
+
+/// One weighted fit with the variances settled.
+pub(super) fn weighted(request: &Request, order: &[usize], prepared: Prepared) -> Result<Fit, FitError> {
+    let Request { family, points, units, .. } = *request;
+    let scaled = &prepared.scaled;
     let sorted = ScaledWeights { values: order.iter().map(|i| scaled.values[*i]).collect(), exponent: scaled.exponent };
-    let x: Vec<f64> = order.iter().map(|i| points[*i].x).collect();
-    let y: Vec<f64> = order.iter().map(|i| points[*i].y).collect();
+    let ascending: Vec<Point> = order.iter().map(|i| points[*i]).collect();
+    let x: Vec<f64> = ascending.iter().map(|p| p.x).collect();
+    let y: Vec<f64> = ascending.iter().map(|p| p.y).collect();
+    let columns = |columns: Vec<Vec<Dd>>| fit_columns(&columns, &y, &sorted);
     let solved = match family {
         Family::Declared => return Err(FitError::NotFitted),
-        Family::Polynomial(degree) => fit_polynomial(&x, &y, &sorted, usize::from(*degree)),
-        Family::Log => {
-            let logarithms = x.iter().map(|x| Dd::from(*x).ln()).collect();
-            fit_columns(&[vec![Dd::ONE; x.len()], logarithms], &y, &sorted)
+        Family::Polynomial(degree) => {
+            let solved = fit_centred(&x, &y, &sorted, usize::from(*degree));
+            let (solved, centred) = solved.map_err(|e| unsolved(family, e))?;
+            let curve = polynomial(&solved, centred);
+            return assemble(request, prepared, order, solved, curve);
+        }
+        Family::LineThroughZero | Family::OnePoint => columns(vec![x.iter().map(|x| Dd::from(*x)).collect()]),
+        Family::Log => columns(vec![vec![Dd::ONE; x.len()], x.iter().map(|x| Dd::from(*x).ln()).collect()]),
+        _ => {
+            let found = nonlinear::search(request, &ascending, &sorted)?;
+            let mut fit = assemble(request, prepared, order, found.solved, Curve::Shape(found.shape))?;
+            fit.effort = Some(found.effort);
+            if family.fitted_in_measurand() {
+                nonlinear::to_indication(&mut fit)?;
+            }
+            return Ok(fit);
         }
     };
-    let solved = solved.map_err(|error| match error {
+    let solved = solved.map_err(|e| unsolved(family, e))?;
+    let curve = Curve::new(family, units, solved.coefficients.clone());
+    assemble(request, prepared, order, solved, curve)
+}
+
+fn unsolved(family: &Family, error: SolveError) -> FitError {
+    match error {
         SolveError::Singular => FitError::TooClose { coefficients: family.coefficient_count() },
         SolveError::OutOfRange => FitError::OutOfRange,
-    })?;
-    assemble(family, points, weights, variance_ratio, &order, solved)
+    }
+}
+
+/// Condition of the powers of x above which they lose digits that a converted value needs.
+const POWERS_CANCEL: f64 = 1e6;
+
+/// The polynomial, evaluated about its centre when powers of x would cancel.
+fn polynomial(solved: &LeastSquares, centred: CentredPolynomial) -> Curve {
+    let powers = solved.coefficients.clone();
+    if solved.condition <= POWERS_CANCEL {
+        return Curve::Polynomial(powers);
+    }
+    let CentredPolynomial { centre, scale, coefficients } = centred;
+    Curve::Centred(Centred { powers, centre, scale, coefficients })
 }
 
 /// Compares observations with a declared function: the residuals are the errors of the instrument.
@@ -91,6 +181,13 @@ pub fn declared(formula: &Formula, points: &[Point]) -> Result<Fit, FitError> {
         residuals: errors,
         leverage: vec![0.0; n],
         variance_ratio: vec![1.0; n],
+        scatter: Scatter::Residuals,
+        variance_model: VarianceModel::Constant,
+        fitted_power: None,
+        effort: None,
+        both_axes: None,
+        standards: None,
+        repeats_alone: None,
         uncertainties: Vec::new(),
         orthonormal: Vec::new(),
         basis: None,
@@ -105,14 +202,19 @@ fn check(family: &Family, points: &[Point]) -> Result<(), FitError> {
         Family::Polynomial(degree) if *degree > HIGHEST_DEGREE => {
             return Err(FitError::DegreeTooHigh { degree: *degree });
         }
-        Family::Polynomial(_) | Family::Log => {}
+        _ => {}
     }
     check_finite(points)?;
     if let Some(index) = points.iter().position(|p| !family.has_value_at(p.x)) {
         let x = points[index].x;
-        return Err(FitError::OutsideDomain { index, x });
+        return Err(FitError::OutsideDomain { what: what_lacks(family), index, x });
     }
     Ok(())
+}
+
+/// What a family lacks outside its domain, in words.
+pub(super) fn what_lacks(family: &Family) -> &'static str {
+    if *family == Family::Log { "the logarithm of" } else { "a value of this function at" }
 }
 
 /// Positions of the points by x, then by y; adding zero turns −0 into 0.
@@ -143,13 +245,13 @@ fn check_finite(points: &[Point]) -> Result<(), FitError> {
 
 /// Puts a solution for the ordered points together with the points as they came.
 fn assemble(
-    family: &Family,
-    points: &[Point],
-    weights: Weights,
-    variance_ratio: Vec<f64>,
+    request: &Request,
+    prepared: Prepared,
     order: &[usize],
     solved: LeastSquares,
+    curve: Curve,
 ) -> Result<Fit, FitError> {
+    let Request { family, points, weights, .. } = *request;
     let restore = |sorted: &[f64]| {
         let mut out = vec![0.0; sorted.len()];
         for (value, place) in sorted.iter().zip(order) {
@@ -159,30 +261,53 @@ fn assemble(
     };
     let orthonormal: Vec<Vec<f64>> = solved.orthonormal.iter().map(|c| restore(c)).collect();
     let leverage = (0..points.len()).map(|i| orthonormal.iter().map(|q| q[i] * q[i]).sum::<f64>().min(1.0)).collect();
-    let curve = match (family, solved.coefficients.as_slice()) {
-        (Family::Log, [a, b]) => Curve::Log([*a, *b]),
-        _ => Curve::Polynomial(solved.coefficients.clone()),
-    };
     let residuals = restore(&solved.residuals);
     if residuals.iter().any(|e| !e.is_finite()) {
         return Err(FitError::OutOfRange);
     }
+    let levels = super::levels::levels(points).len();
+    let scatter = match weights {
+        Weights::Raw => repeats::of_means(&solved, points.len(), levels),
+        _ => prepared.scatter,
+    };
+    let (covariance, uncertainties) = spread_of_coefficients(&solved, scatter)?;
     Ok(Fit {
         family: family.clone(),
         weights,
         curve,
         points: points.to_vec(),
-        covariance: solved.covariance,
+        covariance,
         degrees_of_freedom: points.len() - solved.coefficients.len(),
         coefficients: solved.coefficients,
         residual_ss: solved.residual_ss,
         residual_sd: solved.residual_sd,
         residuals,
         leverage,
-        variance_ratio,
-        uncertainties: solved.uncertainties,
+        variance_ratio: prepared.ratio,
+        scatter,
+        variance_model: prepared.model,
+        fitted_power: None,
+        effort: None,
+        both_axes: None,
+        standards: None,
+        repeats_alone: None,
+        uncertainties,
         orthonormal,
         basis: Some(solved.basis),
         condition: solved.condition,
     })
+}
+
+/// Covariance and standard uncertainties of the coefficients, σ known as the kind of weights says.
+fn spread_of_coefficients(solved: &LeastSquares, scatter: Scatter) -> Result<(Vec<Vec<f64>>, Vec<f64>), FitError> {
+    let variance = match scatter {
+        // Already there, rounded once.
+        Scatter::Residuals => return Ok((solved.covariance.clone(), solved.uncertainties.clone())),
+        Scatter::Repeats { variance, .. } | Scatter::Means { variance, .. } => variance,
+        Scatter::Known => 1.0,
+    };
+    let scaled: Vec<Vec<f64>> =
+        solved.unit_covariance.iter().map(|row| row.iter().map(|c| c * variance).collect()).collect();
+    let uncertainties: Vec<f64> = scaled.iter().enumerate().map(|(j, row)| libm::sqrt(row[j])).collect();
+    if uncertainties.iter().all(|u| u.is_finite()) { Ok((scaled, uncertainties)) } else { Err(FitError::OutOfRange) }
 }

@@ -3,12 +3,14 @@
 use super::*;
 use proptest::prelude::*;
 
-const FAMILIES: [Family; 6] = [
+const FAMILIES: [Family; 8] = [
     Family::Polynomial(0),
     Family::Polynomial(1),
     Family::Polynomial(2),
     Family::Polynomial(5),
     Family::Polynomial(10),
+    Family::LineThroughZero,
+    Family::OnePoint,
     Family::Log,
 ];
 
@@ -76,13 +78,14 @@ proptest! {
         let before = fit(&family, &points, weights).unwrap();
         let after = fit(&family, &scaled(&points, by_x, by_y), weights).unwrap();
         let log = family == Family::Log;
+        let lowest = usize::from(matches!(family, Family::LineThroughZero | Family::OnePoint));
         for (j, (old, new)) in before.coefficients.iter().zip(&after.coefficients).enumerate() {
             // ln(2^a x) is not a rescaled ln x: only the slope keeps its bits, and only nearly.
             if log {
                 let slope_or_not = j == 1;
                 prop_assert!(!slope_or_not || (new / (old * by_y) - 1.0).abs() < 1e-12);
             } else {
-                prop_assert_eq!(*new, old * by_y / f64::powi(by_x, i32::try_from(j).unwrap()));
+                prop_assert_eq!(*new, old * by_y / f64::powi(by_x, i32::try_from(j + lowest).unwrap()));
             }
         }
         if !log {
@@ -111,6 +114,48 @@ proptest! {
         for (p, e) in two.points.iter().zip(&two.residuals) {
             let same = one.points.iter().zip(&one.residuals).any(|(q, f)| p == q && e == f);
             prop_assert!(same);
+        }
+    }
+
+    /// Factors that are no power of two round every number once: the fitted values move by units of the
+    /// last place, times what the fit itself makes of such a change.
+    #[test]
+    fn any_factor_rescales_to_the_last_places(
+        points in ordinary(), family in any_family(), weights in any_weights(), by_x in 0.01..90.0_f64,
+        by_y in 0.01..90.0_f64, at in 0.4..10.0_f64,
+    ) {
+        let before = fit(&family, &points, weights).unwrap();
+        let after = fit(&family, &scaled(&points, by_x, by_y), weights).unwrap();
+        // Degree 10 on 11 levels is too close to singular for a bound this simple.
+        prop_assume!(family != Family::Polynomial(10));
+        let sensitivity = |x: f64| -> f64 {
+            let moved = |(l, p): (&f64, &Point)| {
+                (l * p.y).abs() + (l * before.curve.derivative(p.x) * p.x).abs()
+            };
+            before.influence(x).iter().zip(&points).map(moved).sum()
+        };
+        let powers: f64 = before.curve.gradient(at).iter().zip(&before.coefficients).map(|(g, b)| (g * b).abs()).sum();
+        let allowed = 16.0 * f64::EPSILON * (sensitivity(at) + powers + before.residual_sd.unwrap_or(0.0));
+        let moved = (after.curve.value(at * by_x) / by_y - before.curve.value(at)).abs();
+        prop_assert!(moved <= allowed, "{moved:e} {allowed:e}");
+        // The weights 1/x … scale with their unit; Σwe² in units of its own is compared through s·√v.
+        let sd = |f: &Fit, x: f64| f.residual_sd.unwrap() * libm::sqrt(f.variance_at(x));
+        prop_assert!((sd(&after, at * by_x) / (by_y * sd(&before, at)) - 1.0).abs() < 1e-9);
+    }
+
+    /// One known uncertainty for all readings, or one standard for all of them, is no weighting.
+    #[test]
+    fn equal_weights_are_no_weights(points in ordinary(), family in any_family(), power in -20..20_i32, u in 0.01..9.0_f64) {
+        let plain = fit(&family, &points, Weights::Equal).unwrap();
+        for (u, ulps) in [(f64::powi(2.0, power), 0.0), (u, 2.0)] {
+            let own = vec![u; points.len()];
+            let request =
+                Request { reading_uncertainty: Some(&own), ..Request::new(&family, &points, Weights::Typed) };
+            let typed = estimate(&request).unwrap();
+            for (a, b) in plain.coefficients.iter().zip(&typed.coefficients) {
+                prop_assert!((a - b).abs() <= ulps * f64::EPSILON * a.abs(), "{a:e} {b:e}");
+            }
+            prop_assert!((typed.residual_ss * u * u / plain.residual_ss - 1.0).abs() < 1e-13);
         }
     }
 

@@ -9,7 +9,14 @@ impl Fit {
         match &self.basis {
             None => Vec::new(),
             Some(basis @ Basis::Orthogonal { .. }) => basis.at(x),
-            Some(basis @ Basis::Triangular(_)) => basis.at_regressors(&self.curve.gradient(x)),
+            Some(basis @ Basis::Triangular(_)) => {
+                let mut place = basis.at_regressors(&self.curve.gradient(x));
+                // For a family fitted in the measurand ∂f/∂β = −f′·∂T/∂β; its size, |f′|, is meant.
+                if self.family.fitted_in_measurand() && self.both_axes.is_none() && self.curve.derivative(x) > 0.0 {
+                    place.iter_mut().for_each(|z| *z = -*z);
+                }
+                place
+            }
         }
     }
 
@@ -23,17 +30,17 @@ impl Fit {
         self.place(x).iter().map(|z| z * z).sum()
     }
 
-    /// Var f̂(x) = s²·g(x)ᵀ(XᵀWX)⁻¹g(x), output unit squared.
+    /// Var f̂(x) = σ²·g(x)ᵀ(XᵀWX)⁻¹g(x), output unit squared.
     ///
     /// # Errors
     ///
-    /// Not a number with ν = 0 (s is not known) and outside the domain; 0 for declared.
+    /// Not a number while σ is not known (relative weights with ν = 0) and outside the domain; 0 for declared.
     #[must_use]
     pub fn mean_variance(&self, x: f64) -> f64 {
         if self.basis.is_none() {
             return 0.0;
         }
-        self.residual_sd.map_or(f64::NAN, |s| s * s * self.variance_factor(x))
+        self.scatter_sd().map_or(f64::NAN, |s| s * s * self.variance_factor(x))
     }
 
     /// Var f̂′(x)/s²: as [`Fit::variance_factor`], for the slope.
@@ -53,7 +60,7 @@ impl Fit {
         if self.basis.is_none() {
             return 0.0;
         }
-        self.residual_sd.map_or(f64::NAN, |s| s * s * self.slope_variance_factor(x))
+        self.scatter_sd().map_or(f64::NAN, |s| s * s * self.slope_variance_factor(x))
     }
 
     /// ℓ(x): the weight of each observation in f̂(x) = Σ ℓ_i(x) y_i, in the order of the points.

@@ -4,17 +4,26 @@ use super::Weights;
 use std::{fmt, str::FromStr};
 
 /// All weights with their typed and their shown name.
-pub const NAMES: [(Weights, &str, &str); 5] = [
+pub const NAMES: [(Weights, &str, &str); 11] = [
     (Weights::Equal, "equal", "equal weights"),
     (Weights::InverseX, "1/x", "1/x"),
     (Weights::InverseX2, "1/x2", "1/x²"),
     (Weights::InverseY, "1/y", "1/y"),
     (Weights::InverseY2, "1/y2", "1/y²"),
+    (Weights::Replicates, "replicates", "from repeats"),
+    (Weights::ReplicatesConstant, "replicates:constant", "from repeats, one SD"),
+    (Weights::ReplicatesProportional, "replicates:proportional", "from repeats, one relative SD"),
+    (Weights::Raw, "1/s2", "1/s² of each level"),
+    (Weights::Typed, "typed", "1/u²"),
+    (Weights::Fitted, "fitted", "power of the signal"),
 ];
 
 /// A text that names no weights.
 #[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]
-#[error("{found:?} names no weights; accepted: equal, 1/x, 1/x2, 1/y, 1/y2")]
+#[error(
+    "{found:?} names no weights; accepted: equal, replicates, replicates:constant, replicates:proportional, typed, \
+     1/x, 1/x2, 1/y, 1/y2, 1/s2, fitted"
+)]
 pub struct NoSuchWeights {
     /// What was found.
     pub found: String,

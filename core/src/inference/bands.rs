@@ -3,7 +3,7 @@
 //! *Mean band*: where the curve itself lies at one x. *Prediction band*: where the mean of k further
 //! readings at one x will lie. *Simultaneous band*: where the whole curve lies, at every x at once.
 
-use crate::distributions::{f_upper, t_quantile};
+use crate::distributions::f_upper;
 use crate::fit::Fit;
 use crate::numerics::roots::bracketed_root;
 
@@ -35,11 +35,12 @@ pub struct BandsAt {
 }
 
 impl<'a> Bands<'a> {
-    /// Prepares the bands of a fit; `None` when it has no residual SD (ν = 0) or `k` is 0.
+    /// Prepares the bands of a fit; `None` while its scatter is not known (ν = 0) or `k` is 0.
     ///
     /// # Formula
     /// mean: t·√(Var f̂(x)); prediction: t·√(s²·v(x)/k + Var f̂(x)); simultaneous:
-    /// √(p·F_{level; p, ν})·√(Var f̂(x)), with t = t_{(1+level)/2, ν}.
+    /// √(p·F_{level; p, ν})·√(Var f̂(x)), with t = t_{(1+level)/2, ν}; s is the scatter where v = 1
+    /// and ν its degrees of freedom, by the kind of weights (the normal factor where it is known).
     ///
     /// # Shapes and units
     /// `level` in (0, 1), e.g. 0.95; `k`: how many further readings are averaged. Output unit.
@@ -49,18 +50,18 @@ impl<'a> Bands<'a> {
     /// (1929), J. Amer. Statist. Assoc. 24, 73–85. Both from memory.
     #[must_use]
     pub fn new(fit: &'a Fit, level: f64, k: usize) -> Option<Self> {
-        let s = fit.residual_sd?;
+        let s = fit.scatter_sd()?;
         if k == 0 || !(level > 0.0 && level < 1.0) {
             return None;
         }
-        let nu = fit.degrees_of_freedom as f64;
+        let nu = fit.scatter_freedom();
         let p = fit.coefficients.len() as f64;
         Some(Self {
             fit,
             level,
             k,
             s2: s * s,
-            t: t_quantile(0.5 * (1.0 + level), nu),
+            t: fit.coverage_factor(level),
             simultaneous: if p > 0.0 { libm::sqrt(p * f_quantile(level, p, nu)?) } else { 0.0 },
         })
     }

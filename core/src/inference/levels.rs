@@ -1,6 +1,7 @@
 //! Observations gathered by standard: the levels that most checks of a fit reason about.
 
 use crate::fit::Point;
+use crate::numerics::sums::Deviations;
 
 /// All observations of one standard.
 #[derive(Debug, Clone, PartialEq)]
@@ -50,16 +51,11 @@ pub fn levels(points: &[Point]) -> Vec<Level> {
     found
 }
 
-/// Mean of a non-empty run of values, summed about the first one so that large offsets keep digits.
+/// Mean of a run of values, summed in double-double so that large offsets keep their digits; not a number
+/// without values, or with one that is not finite.
 pub(crate) fn mean_of(values: impl Iterator<Item = f64>) -> f64 {
-    let mut first = None;
-    let (mut sum, mut n) = (0.0, 0.0);
-    for value in values {
-        let origin = *first.get_or_insert(value);
-        sum += value - origin;
-        n += 1.0;
-    }
-    first.map_or(f64::NAN, |origin| origin + sum / n)
+    let values: Vec<f64> = values.collect();
+    Deviations::new(&values).map_or(f64::NAN, |found| found.mean())
 }
 
 #[cfg(test)]

@@ -125,6 +125,8 @@ pub(crate) struct Ladder {
     degree: usize,
     /// The abscissa is ln x.
     logarithmic: bool,
+    /// Added to x before its logarithm is taken, where a standard of zero takes part.
+    offset: f64,
     /// Lowest abscissa.
     low: f64,
     /// Highest abscissa.
@@ -137,9 +139,14 @@ impl Ladder {
         let (degree, logarithmic) = match fit.family {
             Family::Declared => return None,
             Family::Polynomial(d) => (usize::from(d), false),
-            Family::Log => (1, true),
+            // The term after b₁x is x²; the missing constant is another question.
+            Family::LineThroughZero | Family::OnePoint => (1, false),
+            // Any other family: what a polynomial with as many coefficients could not follow.
+            _ => (fit.coefficients.len() - 1, fit.family.logarithmic()),
         };
-        let mut ladder = Self { degree, logarithmic, low: f64::INFINITY, high: f64::NEG_INFINITY };
+        let positive = fit.points.iter().map(|p| p.x).filter(|x| *x > 0.0).fold(f64::INFINITY, f64::min);
+        let offset = if fit.points.iter().all(|p| p.x > 0.0) { 0.0 } else { positive };
+        let mut ladder = Self { degree, logarithmic, offset, low: f64::INFINITY, high: f64::NEG_INFINITY };
         for point in &fit.points {
             let a = ladder.abscissa(point.x);
             ladder.low = ladder.low.min(a);
@@ -149,7 +156,7 @@ impl Ladder {
     }
 
     fn abscissa(&self, x: f64) -> f64 {
-        if self.logarithmic { libm::log(x) } else { x }
+        if self.logarithmic { libm::log(x + self.offset) } else { x }
     }
 
     /// The `step`-th term after the family's last one (1: the next), at x.

@@ -26,6 +26,15 @@ impl Branch {
 }
 
 impl Curve {
+    /// Where the curve has a pole, ascending, input unit; a typed formula is not searched for any.
+    #[must_use]
+    pub fn poles(&self) -> Vec<f64> {
+        match self {
+            Self::Shape(shape) => shape.poles(),
+            Self::Polynomial(_) | Self::Centred(_) | Self::Log(_) | Self::Formula(_) => Vec::new(),
+        }
+    }
+
     /// Where the slope changes sign inside (lo, hi), ascending, input unit.
     ///
     /// Complete for polynomials and logarithms, for infinite intervals too; a formula is scanned in 512
@@ -34,8 +43,9 @@ impl Curve {
     pub fn turning_points(&self, lo: f64, hi: f64) -> Vec<f64> {
         match self {
             Self::Polynomial(b) => polynomial::turning_points(b, lo, hi),
+            Self::Centred(c) => c.turning_points(lo, hi),
             Self::Log(_) => Vec::new(),
-            Self::Formula(formula) => sign_changes(|x| formula.derivative(x), lo, hi, SCAN),
+            Self::Shape(_) | Self::Formula(_) => sign_changes(|x| self.derivative(x), lo, hi, SCAN),
         }
     }
 
@@ -45,7 +55,7 @@ impl Curve {
     pub fn branches(&self, lo: f64, hi: f64) -> Vec<Branch> {
         let lo = match self {
             Self::Log(_) => lo.max(f64::MIN_POSITIVE),
-            Self::Polynomial(_) | Self::Formula(_) => lo,
+            Self::Polynomial(_) | Self::Centred(_) | Self::Shape(_) | Self::Formula(_) => lo,
         };
         if lo.is_nan() || hi.is_nan() || lo >= hi {
             return Vec::new();
@@ -67,8 +77,8 @@ impl Curve {
         // A formula that falls everywhere and yet ends higher has a pole in between.
         let rise = self.value(hi) - self.value(lo);
         let jumps = match self {
-            Self::Formula(_) => rise.is_nan() || (rise > 0.0) != rising,
-            Self::Polynomial(_) | Self::Log(_) => false,
+            Self::Shape(_) | Self::Formula(_) => rise.is_nan() || (rise > 0.0) != rising,
+            Self::Polynomial(_) | Self::Centred(_) | Self::Log(_) => false,
         };
         (!jumps).then_some(Branch { lo, hi, rising })
     }
@@ -83,18 +93,17 @@ impl Curve {
             return Vec::new();
         }
         match self {
-            Self::Polynomial(b) => {
-                let mut shifted = b.clone();
-                if let Some(first) = shifted.first_mut() {
-                    *first -= y;
-                }
-                polynomial::roots(&shifted, lo, hi)
-            }
+            Self::Polynomial(b) => polynomial::solve(b, y, lo, hi),
+            Self::Centred(c) => c.solve(y, lo, hi),
             Self::Log(ab) => {
                 let root = log::solve(*ab, y);
                 root.filter(|x| (lo..=hi).contains(x)).into_iter().collect()
             }
-            Self::Formula(formula) => sign_changes(|x| formula.value(x) - y, lo, hi, SCAN),
+            Self::Shape(shape) if matches!(shape.family(), super::Family::Formula(_)) => {
+                sign_changes(|x| self.value(x) - y, lo, hi, SCAN)
+            }
+            Self::Shape(shape) => shape.solve(y).filter(|x| (lo..=hi).contains(x)).into_iter().collect(),
+            Self::Formula(_) => sign_changes(|x| self.value(x) - y, lo, hi, SCAN),
         }
     }
 }

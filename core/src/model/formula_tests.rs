@@ -1,6 +1,6 @@
 //! Typed formulas: what they mean, and what is said when they cannot be read.
 
-use super::formula::{Formula, FormulaError};
+use super::{Formula, FormulaError};
 use proptest::prelude::*;
 
 fn value(text: &str, x: f64) -> f64 {

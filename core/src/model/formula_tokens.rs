@@ -1,6 +1,6 @@
 //! Splits a formula into numbers, names and signs, each with its column.
 
-use super::formula::{FormulaError, LENGTH_LIMIT};
+use super::formula_error::{FormulaError, LENGTH_LIMIT};
 
 /// What stands at one place of a formula.
 #[derive(Debug, Clone, PartialEq)]

@@ -1,5 +1,8 @@
 //! The logarithm: y = a + b ln x.
 
+/// The printed formula.
+pub(super) const FORMULA: &str = "y = a + b ln x";
+
 /// x > 0 and finite.
 pub(super) fn domain(x: f64) -> bool {
     x > 0.0 && x.is_finite()

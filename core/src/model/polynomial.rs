@@ -62,6 +62,15 @@ pub(super) fn inside(lo: f64, hi: f64) -> f64 {
     }
 }
 
+/// Every x in [lo, hi] at which the polynomial takes the value y.
+pub(super) fn solve(b: &[f64], y: f64, lo: f64, hi: f64) -> Vec<f64> {
+    let mut shifted = b.to_vec();
+    if let Some(first) = shifted.first_mut() {
+        *first -= y;
+    }
+    roots(&shifted, lo, hi)
+}
+
 /// All real roots of b₀ + b₁x + … in [lo, hi], ascending; none for a constant.
 ///
 /// The roots of the derivative cut the interval into pieces on which the polynomial is monotone, so each

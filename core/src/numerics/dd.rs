@@ -16,12 +16,13 @@ use std::ops::{Add, AddAssign, Div, DivAssign, Mul, MulAssign, Neg, Sub, SubAssi
 ///
 /// Relative error below 2⁻¹⁰² for `+ − × ÷ √`, for magnitudes between about 1e-140 and 1e140 (the low
 /// word of a product must not underflow and the splitting must not overflow). Callers bring their data
-/// there with [`super::scale::Scaled`]; outside, results become non-finite and are reported as such.
+/// there with [`super::scale::Scaled`]; outside, results lose low bits or become non-finite and are reported
+/// as such. Infinities keep their sign and meaning through `+ × ÷`, so that 1/(1 + ∞) is 0 as for doubles.
 ///
 /// # Source
 ///
 /// Dekker, Numer. Math. 18 (1971) 224; Joldes, Muller and Popescu, ACM Trans. Math. Softw. 44 (2017)
-/// 15res, algorithms 4, 6, 11 and the long division of Hida, Li and Bailey, ARITH-15 (2001). From memory.
+/// 15, algorithms 4, 6, 11 and the long division of Hida, Li and Bailey, ARITH-15 (2001). From memory.
 #[derive(Debug, Clone, Copy, PartialEq, PartialOrd, Default)]
 pub struct Dd {
     hi: f64,
@@ -72,6 +73,13 @@ impl Dd {
     pub const ONE: Self = Self { hi: 1.0, lo: 0.0 };
     /// ln 2 to double-double precision (computed with 60 digits).
     pub const LN_2: Self = Self { hi: std::f64::consts::LN_2, lo: 2.319_046_813_846_299_6e-17 };
+    /// ln 10, likewise.
+    pub const LN_10: Self = Self { hi: std::f64::consts::LN_10, lo: -2.170_756_223_382_249_4e-16 };
+
+    /// Two words that are normalised already: |lo| ≤ ½ ulp(hi).
+    pub(super) const fn new(hi: f64, lo: f64) -> Self {
+        Self { hi, lo }
+    }
 
     /// The exact sum of two doubles.
     #[must_use]
@@ -130,10 +138,10 @@ impl Dd {
     /// One Newton step s + (a − s²)/(2s) on the rounded root.
     #[must_use]
     pub fn sqrt(self) -> Self {
-        if self.hi == 0.0 {
-            return Self::ZERO;
-        }
         let root = libm::sqrt(self.hi);
+        if root == 0.0 || !root.is_finite() {
+            return Self::from(root);
+        }
         let rest = self - Self::from_product(root, root);
         let (hi, lo) = quick_two_sum(root, rest.hi / (2.0 * root));
         Self { hi, lo }
@@ -158,6 +166,9 @@ impl Add for Dd {
     #[inline]
     fn add(self, other: Self) -> Self {
         let (sum, error) = two_sum(self.hi, other.hi);
+        if !sum.is_finite() {
+            return Self::from(sum);
+        }
         let (low_sum, low_error) = two_sum(self.lo, other.lo);
         let (sum, error) = quick_two_sum(sum, error + low_sum);
         let (hi, lo) = quick_two_sum(sum, error + low_error);
@@ -178,6 +189,9 @@ impl Mul for Dd {
     #[inline]
     fn mul(self, other: Self) -> Self {
         let (product, error) = two_product(self.hi, other.hi);
+        if !product.is_finite() {
+            return Self::from(product);
+        }
         let cross = self.hi * other.lo + self.lo * other.hi;
         let (hi, lo) = quick_two_sum(product, error + cross);
         Self { hi, lo }
@@ -189,6 +203,9 @@ impl Mul<f64> for Dd {
     #[inline]
     fn mul(self, other: f64) -> Self {
         let (product, error) = two_product(self.hi, other);
+        if !product.is_finite() {
+            return Self::from(product);
+        }
         let (hi, lo) = quick_two_sum(product, error + self.lo * other);
         Self { hi, lo }
     }
@@ -198,6 +215,9 @@ impl Div for Dd {
     type Output = Self;
     fn div(self, other: Self) -> Self {
         let first = self.hi / other.hi;
+        if first == 0.0 || !first.is_finite() {
+            return Self::from(first);
+        }
         let rest = self - other * first;
         let second = rest.hi / other.hi;
         let rest = rest - other * second;

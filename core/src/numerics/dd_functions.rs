@@ -1,6 +1,7 @@
 //! Exponential and logarithm in double-double.
 
 use super::dd::Dd;
+use super::dd_constants::{INVERSE_FACTORIALS, INVERSE_ODD};
 
 /// Halvings of the reduced argument of `exp`, undone by as many squarings.
 const HALVINGS: i32 = 9;
@@ -31,10 +32,8 @@ impl Dd {
         let halves = libm::round(x / std::f64::consts::LN_2);
         let reduced = (self - Self::LN_2 * halves).times_power_of_two(-HALVINGS);
         // |reduced| < 7e-4: nine terms leave less than 1e-35.
-        let mut series = Self::ZERO;
-        for n in (1..=9).rev() {
-            series = (series + Self::ONE) * reduced / Self::from(f64::from(n));
-        }
+        let terms = INVERSE_FACTORIALS[1..=9].iter().rev();
+        let mut series = terms.fold(Self::ZERO, |sum, c| (sum + *c) * reduced);
         for _ in 0..HALVINGS {
             series = series.times_power_of_two(1) + series.square();
         }
@@ -71,8 +70,8 @@ impl Dd {
         let plain = square.to_f64();
         let tail = (23..=43).rev().step_by(2).fold(0.0, |sum, n| sum * plain + 1.0 / f64::from(n));
         let mut series = Self::from(tail);
-        for n in (1..=21).rev().step_by(2) {
-            series = series * square + Self::ONE / Self::from(f64::from(n));
+        for inverse in INVERSE_ODD.iter().rev() {
+            series = series * square + *inverse;
         }
         let artanh = series * ratio;
         Self::LN_2 * f64::from(exponent) + artanh.times_power_of_two(1)

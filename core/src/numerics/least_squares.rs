@@ -221,13 +221,13 @@ impl Raw {
 }
 
 /// Residuals below this part of ‖√W y‖ are rounding of the double-double arithmetic: the fit is exact.
-const EXACT: f64 = 1e-26;
+pub(super) const EXACT: f64 = 1e-26;
 
 /// Sets the residuals of an exact fit to zero and returns Σ w e².
-pub(super) fn settle_residuals(residuals: &mut [Dd], y: &[f64], weights: &[Dd]) -> Dd {
+pub(super) fn settle_residuals(residuals: &mut [Dd], y: &[Dd], weights: &[Dd]) -> Dd {
     let weighted = |e: Dd, w: Dd| w * e.square();
     let residual_ss: Dd = residuals.iter().zip(weights).map(|(e, w)| weighted(*e, *w)).sum();
-    let total: Dd = y.iter().zip(weights).map(|(v, w)| weighted(Dd::from(*v), *w)).sum();
+    let total: Dd = y.iter().zip(weights).map(|(v, w)| weighted(*v, *w)).sum();
     if residual_ss.to_f64() > total.to_f64() * (EXACT * EXACT) {
         return residual_ss;
     }

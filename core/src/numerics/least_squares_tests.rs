@@ -1,7 +1,7 @@
 //! Householder against the published sets it alone can fit, and against orthogonal polynomials.
 
 use super::Dd;
-use super::householder::fit_columns;
+use super::householder::{fit_columns, fit_columns_exactly};
 use super::least_squares::{Basis, ScaledWeights, SolveError};
 use super::orthogonal::fit_polynomial;
 use serde_json::Value;
@@ -87,6 +87,15 @@ fn orthonormal_columns_are_orthonormal() {
         }
     }
     assert!(matches!(fit.basis, Basis::Orthogonal { .. }));
+}
+
+#[test]
+fn readings_in_double_double_keep_their_low_words() {
+    let y: Vec<Dd> = [1e-20, 3e-20, 2e-20].iter().map(|low| Dd::from_sum(1.0, *low)).collect();
+    let fit = fit_columns_exactly(&[vec![Dd::ONE; 3]], &y, &ScaledWeights::equal(3)).unwrap();
+    // Twenty digits down, sums of numbers near one are good to 1e-31.
+    let close = |a: f64, b: f64| (a / b - 1.0).abs() < 1e-10;
+    assert!(close(fit.residual_sd.unwrap(), 1e-20) && close(fit.residuals[1], 1e-20), "{fit:?}");
 }
 
 #[test]

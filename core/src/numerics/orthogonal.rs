@@ -2,7 +2,7 @@
 
 use super::dd::Dd;
 use super::least_squares::{Basis, LeastSquares, Raw, ScaledWeights, SolveError, settle_residuals};
-use super::scale::{Scaled, as_f64, largest_exponent};
+use super::scale::{Scaled, as_f64, largest_exponent, round_scaled};
 
 /// Part of a polynomial's magnitude that must be left after cancellation: half of the 106 bits.
 const WHAT_MUST_REMAIN: f64 = 1.0 / 9_007_199_254_740_992.0;
@@ -56,6 +56,31 @@ pub fn fit_polynomial(
     weights: &ScaledWeights,
     degree: usize,
 ) -> Result<LeastSquares, SolveError> {
+    fit_centred(x, y, weights, degree).map(|(solved, _)| solved)
+}
+
+/// The same polynomial in t = (x − centre)/scale: where powers of x cancel, these do not.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CentredPolynomial {
+    /// Centre, input unit, exactly this double.
+    pub centre: f64,
+    /// Scale, input unit, a power of two.
+    pub scale: f64,
+    /// Coefficients of 1, t, t² …, output unit.
+    pub coefficients: Vec<f64>,
+}
+
+/// [`fit_polynomial`] with the centred form beside it.
+///
+/// # Errors
+///
+/// As [`fit_polynomial`].
+pub fn fit_centred(
+    x: &[f64],
+    y: &[f64],
+    weights: &ScaledWeights,
+    degree: usize,
+) -> Result<(LeastSquares, CentredPolynomial), SolveError> {
     let p = degree + 1;
     if x.len() < p || x.len() != y.len() || x.len() != weights.values.len() {
         return Err(SolveError::Singular);
@@ -64,13 +89,15 @@ pub fn fit_polynomial(
     let y_scaled = Scaled::new(y);
     let centred = centre(x, w);
     let mut found = stieltjes(&centred.t, &y_scaled.values, w, degree)?;
-    let residual_ss = settle_residuals(&mut found.residuals, &y_scaled.values, w);
+    let y: Vec<Dd> = y_scaled.values.iter().map(|v| Dd::from(*v)).collect();
+    let residual_ss = settle_residuals(&mut found.residuals, &y, w);
     let powers = power_basis(&found, centred.centre);
+    let about_centre = centred_form(&found, &centred, y_scaled.exponent)?;
     let coefficients = (0..p).map(|j| (j..p).map(|k| found.theta[k] * powers[k][j]).sum()).collect();
     let inverse = inverse_of_normal(&found, &powers);
     let condition = condition(&centred, w, &inverse);
     let exponents = 0..i32::try_from(p).unwrap_or(i32::MAX);
-    Raw {
+    let solved = Raw {
         coefficients,
         inverse,
         residual_ss,
@@ -82,7 +109,23 @@ pub fn fit_polynomial(
         basis: basis(&found, &centred, weights.exponent),
         residuals: found.residuals,
     }
-    .round()
+    .round()?;
+    Ok((solved, about_centre))
+}
+
+/// The fitted polynomial in powers of t, each coefficient rounded once.
+fn centred_form(found: &Recurrence, centred: &Centred, y_exponent: i32) -> Result<CentredPolynomial, SolveError> {
+    let powers = power_basis(found, 0.0);
+    let p = powers.len();
+    let coefficient = |j: usize| {
+        let sum: Dd = (j..p).map(|k| found.theta[k] * powers[k][j]).sum();
+        round_scaled(sum, y_exponent).ok_or(SolveError::OutOfRange)
+    };
+    Ok(CentredPolynomial {
+        centre: libm::scalbn(centred.centre, centred.exponent),
+        scale: libm::scalbn(1.0, centred.exponent),
+        coefficients: (0..p).map(coefficient).collect::<Result<_, _>>()?,
+    })
 }
 
 /// Centre and scale. The centre is a double, so that x − centre is exact in double-double.

@@ -50,6 +50,9 @@ impl ColumnSpec {
             head.push_str(" · ");
             head.push_str(self.weights.plain_name());
         }
+        if self.axes == Axes::Both {
+            head.push_str(" · both axes");
+        }
         if self.zeros == Some(ZerosPart::CheckOnly) {
             head.push_str(" · zeros only check");
         }

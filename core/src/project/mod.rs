@@ -10,7 +10,7 @@ pub mod plan;
 
 use crate::{
     quantity::Text,
-    readings::{Chunked, Reading, ReadingId},
+    readings::{Chunked, Reading, ReadingId, Stage},
     standards::{Standard, StandardId},
 };
 use about::{Adjustment, Conditions, EarlierRecord, Import, Item, Kind, Person, Signed, UnitConversion};
@@ -43,6 +43,8 @@ pub struct Project {
     pub conditions: Conditions,
     /// Columns of the comparison; empty = the first three.
     pub columns: Vec<ColumnSpec>,
+    /// The stage looked at; `None`: as left once there is such a reading, else as found.
+    pub stage: Option<Stage>,
     /// Declared function.
     pub declared: Option<Declared>,
     /// The choice, if one was made.

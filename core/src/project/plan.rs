@@ -97,6 +97,14 @@ pub struct DetectionQuestion {
     pub k: u32,
     /// Whether limits rest on the zero readings or on the calibration.
     pub basis: DetectionBasis,
+    /// Relative standard uncertainty at the quantification limit.
+    #[serde(default = "tenth")]
+    pub target: f64,
+}
+
+/// 10 %, the customary target.
+const fn tenth() -> f64 {
+    0.1
 }
 
 /// What the detection limit rests on.
@@ -111,7 +119,7 @@ pub enum DetectionBasis {
 
 impl Default for DetectionQuestion {
     fn default() -> Self {
-        Self { alpha: 0.05, beta: 0.05, k: 1, basis: DetectionBasis::Zeros }
+        Self { alpha: 0.05, beta: 0.05, k: 1, basis: DetectionBasis::Zeros, target: tenth() }
     }
 }
 
@@ -146,6 +154,8 @@ pub struct Plan {
     pub levels: Vec<f64>,
     /// Repeats of each level.
     pub repeats: Option<u32>,
+    /// The largest indication that the instrument can show, output unit.
+    pub full_scale: Option<f64>,
     /// Order of application in words.
     pub order: Option<Text>,
     /// Method with its revision.
@@ -177,6 +187,7 @@ impl Default for Plan {
             decision_rule: None,
             levels: Vec::new(),
             repeats: None,
+            full_scale: None,
             order: None,
             method: None,
             place: None,

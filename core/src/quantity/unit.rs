@@ -85,7 +85,7 @@ pub fn scale_for(unit: &Unit, magnitude: f64) -> Scale {
     let exponent = libm::floor(libm::log10(magnitude)) as i32;
     let step = exponent.div_euclid(3) * 3;
     stepped(unit.as_str(), step).unwrap_or_else(|| {
-        if (0.001..100_000.0).contains(&magnitude) {
+        if (0.01..100_000.0).contains(&magnitude) {
             return same;
         }
         let sign = format!("×10{}", superscript_signed(step));
@@ -135,6 +135,7 @@ mod tests {
         assert_eq!(scale_for(&Unit::new("m"), 0.02).unit, "mm");
         assert_eq!(scale_for(&Unit::new("mA"), 0.02).unit, "µA");
         assert_eq!(scale_for(&Unit::new("°C"), 0.02), Scale { factor: 1.0, unit: "°C".into() });
+        assert_eq!(scale_for(&Unit::new("°C"), 0.005).unit, "×10⁻³ °C");
         assert_eq!(scale_for(&Unit::new("°C"), 2e-4).unit, "×10⁻⁶ °C");
         assert_eq!(scale_for(&Unit::new("m²"), 0.02).unit, "m²");
         assert_eq!(scale_for(&Unit::new("mg/L"), 0.02).unit, "µg/L");

@@ -65,6 +65,8 @@ pub struct StandardPapers {
     pub register_digest: Option<Text>,
     /// What the certificate says about the doubt.
     pub uncertainty: Option<StatedUncertainty>,
+    /// The part of that doubt which the group shares; without it the group shares all of it.
+    pub shared: Option<StatedUncertainty>,
 }
 
 /// One standard value that is applied to the item.

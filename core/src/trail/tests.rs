@@ -11,7 +11,7 @@ use crate::{
         },
     },
     quantity::{Moment, Text},
-    readings::{ReadingId, Slip},
+    readings::{ReadingId, Slip, Stage},
     standards::{StandardId, StandardPapers, StatedUncertainty},
 };
 use proptest::prelude::*;
@@ -66,6 +66,7 @@ fn edits() -> Vec<(Option<&'static str>, Command)> {
         (None, Command::About(AboutCommand::Item(ItemField::Serial, Text::from("11482")))),
         (None, Command::About(AboutCommand::Number(Text::from("ST-2026-0142")))),
         (None, Command::Columns(ColumnsCommand::Show(vec![ColumnSpec::plain(Family::Log)]))),
+        (None, Command::Columns(ColumnsCommand::Stage(Some(Stage::AsFound)))),
         (why, Command::Columns(ColumnsCommand::Choose(ColumnSpec::plain(Family::Polynomial(2))))),
         (
             None,

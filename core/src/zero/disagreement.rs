@@ -82,7 +82,7 @@ fn apart(fit: &Fit, band: &ZeroBand, curve_variance: f64) -> (f64, f64) {
     let own = band.sd * band.sd / band.n as f64;
     let total = own + curve_variance;
     let share = |part: f64, nu: f64| if part > 0.0 { part * part / nu } else { 0.0 };
-    let shares = share(own, band.degrees_of_freedom) + share(curve_variance, fit.degrees_of_freedom as f64);
+    let shares = share(own, band.degrees_of_freedom) + share(curve_variance, fit.scatter_freedom());
     (total, total * total / shares)
 }
 
@@ -91,7 +91,7 @@ fn within(fit: &Fit, n: f64, difference: f64) -> Option<(f64, f64)> {
     let s2 = fit.residual_sd.map(|s| s * s).filter(|s2| *s2 > 0.0)?;
     let nu = fit.degrees_of_freedom.checked_sub(1).filter(|nu| *nu > 0)? as f64;
     // The share of s² that the mean residual of the zeros carries.
-    let share = fit.variance_at(0.0) / n - fit.mean_variance(0.0) / s2;
+    let share = fit.variance_at(0.0) / n - fit.variance_factor(0.0);
     let rest = ((nu + 1.0) * s2 - difference * difference / share) / nu;
     Some((rest * share, nu))
 }

@@ -24,6 +24,8 @@ impl Misses {
     /// # Source
     /// L. N. Trefethen & J. A. C. Weideman (2014), SIAM Review 56, 385–458; from memory.
     pub(super) fn new(nu: f64) -> Self {
+        // Beyond this Student's distribution is the normal one to all digits that matter.
+        let nu = nu.min(1e7);
         let step = (0.35 / libm::sqrt(2.0 * nu)).min(0.06);
         let log_density = |v: f64| {
             let s = libm::log1p(libm::exp(v));

@@ -157,6 +157,9 @@ impl<'a> Net<'a> {
 
     /// √(ν/χ²) at the two ends of the SD's interval, at the zero band's level (else 95 %).
     pub(super) fn sd_factors(&self, zeros: Zeros<'_>) -> (f64, f64) {
+        if self.nu.is_infinite() {
+            return (1.0, 1.0);
+        }
         let level = zeros.band.map_or(0.95, |band| band.level);
         let factor = |p: f64| libm::sqrt(self.nu / chi2_quantile(p, self.nu));
         (factor(0.5 * (1.0 + level)), factor(0.5 * (1.0 - level)))
@@ -178,9 +181,9 @@ fn scatter(fit: &Fit, zeros: Zeros<'_>, basis: Basis) -> Result<(f64, f64, f64, 
             Ok((band.mean, s2, s2 / band.n as f64, band.degrees_of_freedom))
         }
         Basis::Calibration => {
-            let s = fit.residual_sd.filter(|s| *s > 0.0).ok_or(Absent::NoScatter)?;
+            let s = fit.scatter_sd().filter(|s| *s > 0.0).ok_or(Absent::NoScatter)?;
             let new = s * s * fit.variance_at(0.0);
-            let nu = fit.degrees_of_freedom as f64;
+            let nu = fit.scatter_freedom();
             Ok((fit.curve.value(0.0), new, fit.mean_variance(0.0), nu))
         }
     }

@@ -1,6 +1,6 @@
 //! The quantification limit: from where on a value is known to a stated relative uncertainty.
 
-use crate::fit::Fit;
+use crate::fit::{Fit, Variances};
 use crate::numerics::roots::bracketed_root;
 
 /// Where u(x)/x stays at or below the target.
@@ -35,7 +35,7 @@ pub enum Quantification {
 /// The quantification limit of a fit; `None` without standards above zero or without a residual SD.
 ///
 /// # Formula
-/// u(x) = √(s²v(x)/k + Var f̂(x))/|f̂′(x)|; the smallest x in (0, x_max] with u/x ≤ target from there
+/// u(x) = √(σ²v(x)/k + Var f̂(x) + v_std(x))/|f̂′(x)|; the smallest x in (0, x_max] with u/x ≤ target from there
 /// to the next crossing: 512 places even in ln x over three decades below the lowest standard up to
 /// x_max, crossings refined.
 ///
@@ -47,12 +47,12 @@ pub enum Quantification {
 #[must_use]
 pub fn quantification(fit: &Fit, k: usize, target: f64) -> Option<Quantification> {
     const PLACES: i32 = 512;
-    let s = fit.residual_sd?;
+    fit.scatter_sd()?;
     let positive = || fit.points.iter().map(|p| p.x).filter(|x| *x > 0.0);
     let lowest = positive().reduce(f64::min)?;
     let top = positive().fold(lowest, f64::max);
     let relative = |x: f64| {
-        let variance = s * s * fit.variance_at(x) / k.max(1) as f64 + fit.mean_variance(x);
+        let variance = fit.variances(x, k.max(1)).map_or(f64::NAN, Variances::total);
         let ratio = libm::sqrt(variance) / (fit.curve.derivative(x).abs() * x);
         // A flat place tells nothing: infinitely uncertain.
         if ratio.is_nan() { f64::INFINITY } else { ratio }

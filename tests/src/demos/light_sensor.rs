@@ -43,7 +43,7 @@ pub(super) fn spec(seed: u64) -> Spec {
             PlanField::Method(Text::from("SW-19 rev 1, lamp bench")),
             PlanField::Hazards(vec![Hazard::Mains]),
         ],
-        papers: papers("LB-1", "L-0442-26", "2027-01", StatedUncertainty::Limits(0.02)),
+        papers: papers("LB-1", "L-0442-26", "2027-01", StatedUncertainty::Limits(0.003)),
         conditions: [temperature("21.0 °C"), temperature("21.2 °C")],
         rows,
         zeros,

@@ -1,12 +1,14 @@
-//! Water thermistor: none of line, quadratic and logarithm is good enough.
+//! Water thermistor: none of line, quadratic and logarithm is good enough, Steinhart–Hart is.
 
 use super::{
     build::Spec,
     data::{INVENTED, number, papers, row, shuffled, temperature},
 };
 use assize_core::{
+    model::Family,
     numerics::streams::Stream,
     project::{
+        columns::ColumnSpec,
         command::{ItemField, PlanField},
         plan::{Hazard, Quantity, ZeroState},
     },
@@ -39,7 +41,7 @@ pub(super) fn spec(seed: u64) -> Spec {
             PlanField::Output(Quantity::new("resistance", "kΩ")),
             PlanField::Interval(Some((0.0, 35.0))),
             PlanField::ZeroState(ZeroState::None),
-            PlanField::Families(["line", "quadratic", "log"].map(Text::from).to_vec()),
+            PlanField::Families(["line", "quadratic", "log", "steinhart-hart"].map(Text::from).to_vec()),
             PlanField::Laboratory(Text::from("Skerrow Tideworks, Instrument Workshop, Quay 3, Skerrow")),
             PlanField::Method(Text::from("SW-07 rev 2, stirred bath")),
             PlanField::Hazards(vec![Hazard::Baths, Hazard::Mains]),
@@ -51,11 +53,15 @@ pub(super) fn spec(seed: u64) -> Spec {
         story: "A thermistor bead in a probe, read in a stirred bath at eight temperatures, twice each, in random order.\n\
             Its resistance falls from 31 kΩ to under 7 kΩ: far from straight.\n\
             The line is hopeless, the quadratic waves by half a degree, the logarithm bends the other way.\n\
-            None of these is good enough, and the program says so instead of picking the least bad.\n\
+            None of these three is good enough, and the program says so instead of picking the least bad.\n\
             The repeats agree to a few millikelvin: the misfit is the function's, not the bath's.\n\
-            The right shape for such a bead relates 1/T to ln R (Steinhart and Hart, 1968).\n\
+            The right shape for such a bead relates 1/T to ln R (Steinhart and Hart, 1968): the plan names it, and it leaves only scatter.\n\
             °C has no state of nothing, so there is no detection limit here.\n\
             What can be asked is the smallest change near the cold end.",
+        columns: [Family::Polynomial(1), Family::Polynomial(2), Family::Log, Family::SteinhartHart]
+            .into_iter()
+            .map(ColumnSpec::plain)
+            .collect(),
         origin: INVENTED,
         ..Spec::default()
     }

@@ -54,7 +54,7 @@ pub(super) fn spec(seed: u64) -> Spec {
             PlanField::Method(Text::from("SW-03 rev 9, water column")),
             PlanField::Hazards(vec![Hazard::Pressure]),
         ],
-        papers: papers("WC-1", "P-0913-26", "2027-06", StatedUncertainty::Expanded { expanded: 0.003, factor: 2.0 }),
+        papers: papers("WC-1", "P-0913-26", "2027-06", StatedUncertainty::Expanded { expanded: 0.0006, factor: 2.0 }),
         conditions: [temperature("18.9 °C"), temperature("19.4 °C")],
         declared: Some(Declared { formula: Text::from("4 + 1.6*x"), origin: Text::from("nominal, 4 mA to 20 mA") }),
         rows,

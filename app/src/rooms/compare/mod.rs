@@ -82,7 +82,7 @@ pub fn show(ui: &mut Ui, view: &View<'_>, state: &mut State, wishes: &mut Vec<Wi
     }
     heads::not_fitted(ui, scene);
     folded::columns(ui, scene, state);
-    status::show(ui, scene, state);
+    status::show(ui, scene, state, wishes);
     choose::show(ui, scene, state, wishes);
     if state.hover != hover {
         state.hover = hover;

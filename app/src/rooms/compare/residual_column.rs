@@ -109,7 +109,7 @@ impl ResidualColumn<'_> {
     }
 
     /// Numbers stand at the first axis, and again wherever the scale differs from the one to the left.
-    fn numbered(&self) -> bool {
+    pub(super) fn numbered(&self) -> bool {
         let of = |index: usize| self.shared.scales.coarser.get(index).copied();
         match self.shared.scene.layout.left_of(self.index) {
             Some(left) => of(left) != of(self.index),

@@ -39,8 +39,13 @@ pub(super) fn draw(
             }
             left += put(&text, Align2::LEFT_TOP, left, shapes).width() + 10.0;
         }
-    } else if column.declared() {
-        left = put("errors", Align2::LEFT_TOP, 0.0, shapes).width() + 10.0;
+    } else {
+        // The unit once more where numbers stand that nothing else explains.
+        let unexplained = column.numbered() && column.coarser() <= 1.0;
+        let words = [(unexplained, y_axis.scale.unit.as_str()), (column.declared(), "errors")];
+        for (_, text) in words.into_iter().filter(|(said, _)| *said) {
+            left += put(text, Align2::LEFT_TOP, left, shapes).width() + 10.0;
+        }
     }
     if let Some(text) = own_words(column, y_axis, transform) {
         // Beside the legend where there is room, else at the foot.

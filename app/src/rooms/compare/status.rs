@@ -6,23 +6,37 @@ use super::{
     state::{Against, State},
     words::Scene,
 };
+use crate::{
+    command::{Does, entry},
+    rooms::Wish,
+};
 use eframe::egui::{Align, Button, Key, Layout as Flow, RichText, TextEdit, Ui, UiBuilder};
 
 /// Draws the line.
-pub(super) fn show(ui: &mut Ui, scene: Scene<'_>, state: &mut State) {
+pub(super) fn show(ui: &mut Ui, scene: Scene<'_>, state: &mut State, wishes: &mut Vec<Wish>) {
     let left = scene.layout.columns.first().map_or(scene.layout.status.left(), |c| c.x.min);
     let rect = scene.layout.status.with_min_x(left).with_min_y(scene.layout.status.top() + 3.0);
     let mut line = ui.new_child(UiBuilder::new().max_rect(rect).layout(Flow::left_to_right(Align::Center)));
     line.spacing_mut().item_spacing.x = 5.0;
     switches(&mut line, scene, state);
+    let columns = entry(Does::Columns);
+    let text = format!("columns ({})", columns.shortcut());
+    let pick = quiet(scene, text);
+    if line.add(pick).on_hover_text(columns.hint).clicked() {
+        wishes.push(Wish::PickColumns);
+    }
     if let Some(facts) = state.near().cloned() {
         line.with_layout(Flow::right_to_left(Align::Center), |ui| cursor(ui, scene, state, &facts));
     }
 }
 
+/// A word that does something, no louder than the words around it.
+fn quiet(scene: Scene<'_>, text: String) -> Button<'static> {
+    Button::new(RichText::new(text).font(scene.theme.small()).color(scene.theme.soft_ink)).frame(false)
+}
+
 fn switches(ui: &mut Ui, scene: Scene<'_>, state: &mut State) {
-    let theme = scene.theme;
-    let quiet = |text: String| Button::new(RichText::new(text).font(theme.small()).color(theme.soft_ink)).frame(false);
+    let quiet = |text: String| quiet(scene, text);
     let against = match state.against {
         Against::Value => "against value",
         Against::Order => "against run order",

@@ -26,15 +26,11 @@ pub const ZEROS_PARTS: [(ZerosPart, &str); 2] =
 pub const BASES: [(DetectionBasis, &str); 2] =
     [(DetectionBasis::Zeros, "the zero readings"), (DetectionBasis::Calibration, "scatter about the curve")];
 
-/// Functions offered, in the order of the ladder.
-pub const FAMILIES: [Family; 6] = [
-    Family::Polynomial(1),
-    Family::Polynomial(2),
-    Family::Polynomial(3),
-    Family::Polynomial(4),
-    Family::Polynomial(5),
-    Family::Log,
-];
+/// Functions that a plan can name: all but the declared one, which is always allowed, and typed formulas.
+#[must_use]
+pub fn families() -> Vec<Family> {
+    Family::all().into_iter().filter(|f| *f != Family::Declared).collect()
+}
 
 /// What a state of nothing means, in a sentence.
 #[must_use]
@@ -112,8 +108,9 @@ pub fn with_kind(kind: LimitKind, now: Option<&Limits>) -> Option<Limits> {
 #[must_use]
 pub fn switched(family: &Family, project: &Project) -> Vec<Text> {
     let allowed = |f: &Family| project.plan.allows(f);
-    let now: Vec<&Family> = FAMILIES.iter().filter(|f| allowed(f) != (*f == family)).collect();
-    if now.is_empty() || now.len() == FAMILIES.len() {
+    let all = families();
+    let now: Vec<&Family> = all.iter().filter(|f| allowed(f) != (*f == family)).collect();
+    if now.is_empty() || now.len() == all.len() {
         return Vec::new();
     }
     now.into_iter().map(|f| Text::from(f.to_string())).collect()
@@ -145,7 +142,7 @@ mod tests {
         let mut project = Project::default();
         let line = Family::Polynomial(1);
         let without = switched(&line, &project);
-        assert_eq!(without.len(), FAMILIES.len() - 1);
+        assert_eq!(without.len(), families().len() - 1);
         assert!(!without.contains(&"line".into()));
         project.plan.families = without.iter().map(|n| n.parse().unwrap()).collect();
         assert!(switched(&line, &project).is_empty(), "all of them again");

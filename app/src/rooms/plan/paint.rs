@@ -81,7 +81,7 @@ fn left(ui: &mut Ui, form: &mut Form<'_, '_>) {
 fn right(ui: &mut Ui, form: &mut Form<'_, '_>) {
     section(ui, "What is measured");
     form.row(ui, &[(Field::InputName, 2.0), (Field::InputUnit, 1.0)]);
-    form.row(ui, &[(Field::OutputName, 2.0), (Field::OutputUnit, 1.0)]);
+    form.row(ui, &[(Field::OutputName, 2.0), (Field::OutputUnit, 1.0), (Field::FullScale, 1.0)]);
     form.row(ui, &[(Field::Interval, 1.0), (Field::Levels, 1.0)]);
     form.row(ui, &[(Field::Order, 2.0), (Field::Repeats, 1.0)]);
     section(ui, "Nothing applied");
@@ -110,7 +110,7 @@ fn zero(ui: &mut Ui, form: &mut Form<'_, '_>) {
 fn families(ui: &mut Ui, form: &mut Form<'_, '_>) {
     let project = form.view.project;
     ui.horizontal_wrapped(|ui| {
-        for family in &choices::FAMILIES {
+        for family in &choices::families() {
             let mut on = project.plan.allows(family);
             if ui.checkbox(&mut on, family.plain_name()).changed() {
                 enter(form, PlanField::Families(choices::switched(family, project)));
@@ -122,7 +122,7 @@ fn families(ui: &mut Ui, form: &mut Form<'_, '_>) {
 }
 
 fn detection(ui: &mut Ui, form: &mut Form<'_, '_>) {
-    form.row(ui, &[(Field::Alpha, 1.0), (Field::Beta, 1.0), (Field::Together, 1.0)]);
+    form.row(ui, &[(Field::Alpha, 1.0), (Field::Beta, 1.0), (Field::Together, 1.0), (Field::Target, 1.0)]);
     let mut question = form.view.project.plan.detection;
     if segmented(ui, "The limit rests on …", &mut question.basis, &choices::BASES).changed() {
         enter(form, PlanField::Detection(question));

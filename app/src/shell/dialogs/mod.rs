@@ -1,8 +1,10 @@
 //! What may lie over the window: one question or sheet at a time.
 
+mod columns;
 mod palette;
 mod paths;
 
+pub use columns::Columns;
 pub use palette::Palette;
 pub use paths::{CopyTo, Projects};
 
@@ -39,6 +41,8 @@ pub enum Dialog {
     CopyTo(CopyTo),
     /// Which command.
     Palette(Palette),
+    /// Which functions stand side by side.
+    Columns(Columns),
 }
 
 /// What came of a dialog.
@@ -50,6 +54,8 @@ pub enum Outcome {
     Name(String),
     /// A change with its reason.
     Reasoned(Wish),
+    /// A change that needs none.
+    Wished(Wish),
     /// The end that was cut short may go.
     DropTorn,
     /// The window may close, and what is not on disk is lost.
@@ -89,6 +95,7 @@ impl Dialog {
             Self::Projects(projects) => projects.show(ctx),
             Self::CopyTo(copy) => copy.show(ctx),
             Self::Palette(palette) => palette.show(ctx),
+            Self::Columns(columns) => columns.show(ctx),
         }
     }
 }

@@ -1,7 +1,7 @@
 //! Climbing the ladder of families.
 
 use super::{Advice, Because, HIGHEST_DEGREE, Outcome, Rules, ShapeTest, Tried};
-use crate::fit::{self, Point, Weights};
+use crate::fit::{self, Point, Request, Weights};
 use crate::inference::ftest::FTest;
 use crate::inference::levels::levels;
 use crate::inference::shape::{Shape, TooFew, shape, too_few};
@@ -11,9 +11,11 @@ use crate::model::Family;
 ///
 /// # Formula
 /// Climb line → quadratic → … to degree min(5, m − 2) through the allowed degrees; the first with
-/// p_S > 0.05 stands. The logarithmic family (two coefficients, never more than the ladder's) joins
-/// when the plan suggests it or the line did not stand: if it is good enough too, the lower AICc
-/// wins. When nothing stands: none is good enough. A line through zero is never advised.
+/// p_S > 0.05 stands. Beside it compete, when they are good enough and need no more coefficients: the
+/// families that the plan names; the logarithm when the line did not stand; the logistic when not even
+/// the quadratic did. The lower AICc wins; a thermistor family, whose errors are of another quantity,
+/// wins because the plan names it. When nothing stands: none is good enough. A line through zero is
+/// never advised.
 ///
 /// # Shapes and units
 /// `points`: N observations. Spread decides the weights and drift decides warnings; neither enters.
@@ -25,20 +27,35 @@ pub fn advise(points: &[Point], weights: Weights, rules: &Rules) -> Advice {
     let mut advice = Advice { outcome: Outcome::NothingToJudge, because: Vec::new(), tried: Vec::new() };
     let m = levels(points).len();
     let mut untold = None;
-    let ladder = advice.climb(points, weights, rules, m, &mut untold);
-    let line_stands = ladder == Some(0) && advice.tried[0].family == Family::Polynomial(1);
-    let log = if allows(rules, &Family::Log) && (rules.suggested.contains(&Family::Log) || !line_stands) {
-        advice.attempt(points, weights, rules, Family::Log)
-    } else {
-        None
-    };
-    let log = log.filter(|&i| advice.tried[i].good_enough());
-    advice.outcome = match (ladder, log) {
-        (Some(a), Some(b)) => Outcome::Advised(advice.lower_aicc(a, b)),
-        (Some(i), None) | (None, Some(i)) => Outcome::Advised(advice.tried[i].family.clone()),
-        (None, None) => advice.nothing_stands(points, weights, rules, m, untold),
+    let mut best = advice.climb(points, weights, rules, m, &mut untold);
+    for family in contenders(&advice, rules, best) {
+        let index = advice.attempt(points, weights, rules, family).filter(|&i| advice.tried[i].good_enough());
+        best = match (best, index) {
+            (Some(a), Some(b)) => Some(advice.better(a, b)),
+            (a, b) => a.or(b),
+        };
+    }
+    advice.outcome = match best {
+        Some(i) => Outcome::Advised(advice.tried[i].family.clone()),
+        None => advice.nothing_stands(points, weights, rules, m, untold),
     };
     advice
+}
+
+/// The families that compete with the degree that stands, if one does.
+fn contenders(advice: &Advice, rules: &Rules, ladder: Option<usize>) -> Vec<Family> {
+    let degree = ladder.map(|i| advice.tried[i].coefficients - 1);
+    let ladder_has = |family: &Family| matches!(family, Family::Polynomial(_) | Family::LineThroughZero);
+    let mut all: Vec<Family> = rules.suggested.iter().filter(|f| !ladder_has(f)).cloned().collect();
+    if degree != Some(1) {
+        all.push(Family::Log);
+    }
+    if degree.is_none_or(|d| d > 2) {
+        all.push(Family::Logistic4);
+    }
+    all.retain(|family| allows(rules, family));
+    all.dedup();
+    all
 }
 
 fn allows(rules: &Rules, family: &Family) -> bool {
@@ -84,7 +101,12 @@ impl Advice {
 
     /// Fits and tests one family, noting the reason it gives.
     fn attempt(&mut self, points: &[Point], weights: Weights, rules: &Rules, family: Family) -> Option<usize> {
-        let fit = match fit::fit(&family, points, weights) {
+        let request = Request {
+            units: rules.units,
+            reading_uncertainty: rules.reading_uncertainty.as_deref(),
+            ..Request::new(&family, points, weights)
+        };
+        let fit = match fit::estimate(&request) {
             Ok(fit) => fit,
             Err(error) => {
                 self.because.push(Because::NotFitted { family, error });
@@ -100,22 +122,30 @@ impl Advice {
         Some(self.tried.len() - 1)
     }
 
-    /// The one with the lower AICc; the ladder's when there is no AICc or no difference.
-    fn lower_aicc(&mut self, ladder: usize, other: usize) -> Family {
-        let (a, b) = (&self.tried[ladder], &self.tried[other]);
+    /// The better of two that are good enough: with no more coefficients, the lower AICc.
+    fn better(&mut self, stands: usize, other: usize) -> usize {
+        let (a, b) = (&self.tried[stands], &self.tried[other]);
+        if b.family.fitted_in_measurand() != a.family.fitted_in_measurand() {
+            let named = if b.family.fitted_in_measurand() { other } else { stands };
+            let family = self.tried[named].family.clone();
+            self.because.push(Because::Named { family });
+            return named;
+        }
+        if b.coefficients > a.coefficients {
+            return stands;
+        }
         let (preferred, beaten) = match (a.aicc, b.aicc) {
-            (Some(x), Some(y)) if y < x => (b, a),
+            (Some(x), Some(y)) if y < x => (other, stands),
             // Without AICc the smaller number of coefficients decides.
-            (None, _) if b.coefficients < a.coefficients => (b, a),
-            _ => (a, b),
+            (None, _) if b.coefficients < a.coefficients => (other, stands),
+            _ => (stands, other),
         };
-        let family = preferred.family.clone();
-        if let (Some(aicc), Some(other)) = (preferred.aicc, beaten.aicc) {
-            let over = beaten.family.clone();
-            let family = family.clone();
+        let (winner, loser) = (&self.tried[preferred], &self.tried[beaten]);
+        if let (Some(aicc), Some(other)) = (winner.aicc, loser.aicc) {
+            let (family, over) = (winner.family.clone(), loser.family.clone());
             self.because.push(Because::LowerAicc { family, aicc, over, other });
         }
-        family
+        preferred
     }
 
     /// Nothing allowed stands: too few points, or none good enough (and what would be).

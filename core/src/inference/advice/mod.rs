@@ -9,19 +9,23 @@ pub use climb::advise;
 use super::ftest::FTest;
 use super::shape::{SHAPE_LEVEL, Shape, TooFew};
 use crate::fit::FitError;
-use crate::model::Family;
+use crate::model::{Family, Units};
 
 /// The highest polynomial degree that is ever advised.
 pub const HIGHEST_DEGREE: usize = 5;
 
-/// The functions that the plan lets be advised.
-#[derive(Debug, Clone, PartialEq, Eq)]
+/// The functions that the plan lets be advised, and what fitting them needs to know.
+#[derive(Debug, Clone, PartialEq, Default)]
 pub struct Rules {
     /// Families that may be advised.
     pub allowed: Vec<Family>,
     /// Families that the plan names because the instrument's principle suggests them: they compete
     /// even when a line is good enough.
     pub suggested: Vec<Family>,
+    /// Units of input and output, for thermometers.
+    pub units: Units,
+    /// Standard uncertainty of every observation, for the weights `typed`.
+    pub reading_uncertainty: Option<Vec<f64>>,
 }
 
 /// The advice with everything that led to it.
@@ -94,6 +98,12 @@ pub enum Because {
         over: Family,
         /// The other one's AICc.
         other: f64,
+    },
+    /// The plan names this family, it is good enough, and its errors are of another quantity than the ladder's,
+    /// so that no criterion compares the two.
+    Named {
+        /// The family.
+        family: Family,
     },
     /// The family cannot be fitted to these data.
     NotFitted {

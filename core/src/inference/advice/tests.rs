@@ -6,7 +6,7 @@ use crate::fit::{Point, Weights};
 use crate::numerics::streams::Stream;
 
 fn usual() -> Rules {
-    Rules { allowed: vec![Family::Polynomial(1), Family::Polynomial(2), Family::Log], suggested: Vec::new() }
+    Rules { allowed: vec![Family::Polynomial(1), Family::Polynomial(2), Family::Log], ..Rules::default() }
 }
 
 fn advised(points: &[Point], rules: &Rules) -> Outcome {
@@ -28,7 +28,7 @@ fn the_load_cell_is_advised_a_quadratic_because_the_line_is_refused() {
 
 #[test]
 fn the_plan_bounds_the_advice_and_hears_what_would_do() {
-    let rules = Rules { allowed: vec![Family::Polynomial(1)], suggested: Vec::new() };
+    let rules = Rules { allowed: vec![Family::Polynomial(1)], ..Rules::default() };
     let advice = advise(&pontius(), Weights::Equal, &rules);
     assert_eq!(advice.outcome, Outcome::NoneGoodEnough);
     let would =
@@ -74,6 +74,6 @@ fn too_few_points_are_said_and_not_advised() {
         let outcome = advised(&of(xs), &usual());
         assert!(matches!(outcome, Outcome::TooFewToTell(Family::Polynomial(1), _)), "{outcome:?}");
     }
-    let none = Rules { allowed: Vec::new(), suggested: Vec::new() };
+    let none = Rules { allowed: Vec::new(), ..Rules::default() };
     assert_eq!(advised(&pontius(), &none), Outcome::NothingToJudge);
 }

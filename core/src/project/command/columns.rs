@@ -7,6 +7,7 @@ use crate::{
         Project,
         columns::{Choice, ColumnSpec, Declared},
     },
+    readings::Stage,
 };
 use serde::{Deserialize, Serialize};
 
@@ -15,6 +16,8 @@ use serde::{Deserialize, Serialize};
 pub enum ColumnsCommand {
     /// Shows these columns, one to six.
     Show(Vec<ColumnSpec>),
+    /// Looks at this stage; `None`: as left once there is such a reading, else as found.
+    Stage(Option<Stage>),
     /// Declares a function.
     Declare(Declared),
     /// Chooses a column; needs a reason.
@@ -26,6 +29,10 @@ pub enum ColumnsCommand {
 pub(super) fn apply(project: &mut Project, command: &ColumnsCommand, act: &Act) -> Result<(), Refused> {
     match command {
         ColumnsCommand::Show(columns) => show(project, columns),
+        ColumnsCommand::Stage(stage) => {
+            project.stage = *stage;
+            Ok(())
+        }
         ColumnsCommand::Declare(declared) => {
             declared.formula.parse::<Formula>().map_err(|e| Refused::NotUsable {
                 what: "declared function",

@@ -57,6 +57,8 @@ pub enum PlanField {
     Laboratory(Text),
     /// What the plan works with.
     Hazards(Vec<Hazard>),
+    /// The largest indication that the instrument can show, output unit; `None` clears it.
+    FullScale(Option<f64>),
 }
 
 pub(super) fn apply(project: &mut Project, command: &PlanCommand, act: &Act) -> Result<(), Refused> {
@@ -90,9 +92,11 @@ fn check(field: &PlanField) -> Result<(), Refused> {
         PlanField::Detection(q) => {
             probability(q.alpha, "α")?;
             probability(q.beta, "β")?;
+            probability(q.target, "target")?;
             let none = Refused::NotUsable { what: "k", found: "0".into(), accepted: "1 or more is accepted" };
             if q.k == 0 { Err(none) } else { Ok(()) }
         }
+        PlanField::FullScale(Some(full)) => finite(*full, "full scale", &full.to_string()).map(|_| ()),
         PlanField::Levels(levels) => levels.iter().try_for_each(|&x| finite(x, "level", &x.to_string()).map(|_| ())),
         _ => Ok(()),
     }
@@ -113,6 +117,7 @@ fn set(project: &mut Project, field: &PlanField) -> Result<(), Refused> {
         PlanField::DecisionRule(t) => plan.decision_rule = filled(t),
         PlanField::Levels(l) => plan.levels.clone_from(l),
         PlanField::Repeats(r) => plan.repeats = *r,
+        PlanField::FullScale(full) => plan.full_scale = *full,
         PlanField::Order(t) => plan.order = filled(t),
         PlanField::Method(t) => plan.method = filled(t),
         PlanField::Place(t) => plan.place = filled(t),

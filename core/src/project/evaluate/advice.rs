@@ -8,7 +8,7 @@ use super::{
 use crate::{
     fit::Weights,
     inference::advice::{Outcome, Rules, advise as advise_points},
-    model::Family,
+    model::{Family, Units},
     project::{
         Project,
         columns::ColumnSpec,
@@ -21,22 +21,24 @@ pub(super) fn advise(project: &Project, observations: &[Observation]) -> Advice 
     let plan = &project.plan;
     let zero_is_value = matches!(plan.zero_state, ZeroState::Zero | ZeroState::LiveZero);
     let weights = weights(project);
-    let ask = |zeros: bool, log: bool| {
+    let ask = |zeros: bool, families: &dyn Fn(&Family) -> bool| {
         let used = fitted(observations, plan.zeros_part, zeros);
         let points: Vec<_> = used.iter().map(|&i| observations[i].point()).collect();
-        let families = (1..=5).map(Family::Polynomial).chain(log.then_some(Family::Log));
-        let rules = Rules { allowed: families.filter(|f| plan.allows(f)).collect(), suggested: Vec::new() };
+        let stated: Vec<f64> = used.iter().map(|&i| observations[i].uncertainty.unwrap_or(f64::NAN)).collect();
+        let (allowed, suggested) = candidates(project, families);
+        let units = Units::of(&plan.input.unit, &plan.output.unit);
+        let rules = Rules { allowed, suggested, units, reading_uncertainty: Some(stated) };
         advise_points(&points, weights, &rules)
     };
     let zeros_fitted =
         zero_is_value && plan.zeros_part == ZerosPart::Fitted && observations.iter().any(Observation::is_zero);
-    // A logarithm has no value at zero: it competes on the readings of standards alone.
-    let with_zeros = ask(zero_is_value, !zeros_fitted);
+    // A family without a value at zero competes on the readings of standards alone.
+    let with_zeros = ask(zero_is_value, &|f| !zeros_fitted || f.has_value_at(0.0));
     let line_stands = with_zeros.outcome == Outcome::Advised(Family::Polynomial(1));
-    let advice = if zeros_fitted && !line_stands && plan.allows(&Family::Log) {
-        let without = ask(false, true);
-        let log = without.outcome == Outcome::Advised(Family::Log);
-        if log { without } else { with_zeros }
+    let advice = if zeros_fitted && !line_stands {
+        let without = ask(false, &|_| true);
+        let beyond = matches!(&without.outcome, Outcome::Advised(f) if !f.has_value_at(0.0));
+        if beyond { without } else { with_zeros }
     } else {
         with_zeros
     };
@@ -49,6 +51,16 @@ pub(super) fn advise(project: &Project, observations: &[Observation]) -> Advice 
         }
     };
     Advice { column, because }
+}
+
+/// The families that may be advised, and those among them that the plan names for this instrument.
+fn candidates(project: &Project, wanted: &dyn Fn(&Family) -> bool) -> (Vec<Family>, Vec<Family>) {
+    let plan = &project.plan;
+    let usual = (1..=5).map(Family::Polynomial).chain([Family::Log, Family::Logistic4]);
+    let allowed = usual.filter(|f| plan.allows(f) && wanted(f)).collect();
+    let of_its_own = |f: &&Family| !matches!(f, Family::Polynomial(_) | Family::Log | Family::OnePoint);
+    let suggested = plan.families.iter().filter(of_its_own).filter(|f| wanted(f)).cloned().collect();
+    (allowed, suggested)
 }
 
 /// Weights of the shown columns when they all agree, else equal: spread decides weights, not the family.

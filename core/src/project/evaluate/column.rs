@@ -1,6 +1,7 @@
 //! One column: its fit, what was inferred, its figures and its captions.
 
 use super::{
+    doubt::doubt,
     near_zero::{self, ZeroFacts},
     numbers,
     observe::{Observation, fitted},
@@ -8,11 +9,16 @@ use super::{
     words::{self, ResidualFacts},
 };
 use crate::{
-    distributions::t_quantile,
-    fit::{self, Fit, FitError, Point},
+    convert::{digits::printed, flipped_difference},
+    fit::{self, Fit, FitError, Point, Request, StandardsDoubt},
     inference::{bands::Bands, departure::departure, lack_of_fit::lack_of_fit, shape::shape},
-    model::{Family, formula::Formula},
-    project::{Project, columns::ColumnSpec, plan::ZeroState},
+    model::{Family, Units, formula::Formula},
+    project::{
+        Project,
+        columns::{Axes, ColumnSpec},
+        plan::ZeroState,
+    },
+    zero::quantification::quantification,
 };
 
 /// Fits one column and says what it shows.
@@ -40,13 +46,20 @@ pub fn evaluate(
         outcome: Err(String::new()),
         allowed,
     };
-    match fit_column(project, spec, &points) {
+    let stated: Vec<f64> = used.iter().map(|&i| observations[i].uncertainty.unwrap_or(f64::NAN)).collect();
+    let doubt = doubt(project, observations, &used);
+    match fit_column(project, spec, &points, &stated, doubt.as_ref()) {
         Err(reason) => {
             let reason = place(&reason, project, observations, &used);
             column.captions.curve = Caption::plain(reason.clone());
             column.outcome = Err(reason);
         }
         Ok(fit) => {
+            // A fit in both axes holds the doubt of the standards already.
+            let fit = match doubt {
+                Some(doubt) if spec.axes == Axes::ReadingsOnly => fit.with_standards(doubt),
+                _ => fit,
+            };
             let zeros_fitted = used.iter().any(|&i| observations[i].is_zero());
             let evaluation = infer(project, fit, used, zeros_fitted, zeros);
             column.captions = captions(project, &evaluation, zeros);
@@ -57,22 +70,41 @@ pub fn evaluate(
     column
 }
 
-/// Observations that a column fits: the zeros take part where the plan lets them and the family has a value at 0.
+/// Observations that a column fits: one point takes the highest standard alone; the zeros take part where the plan lets them and the family has a value at 0.
 fn used(project: &Project, observations: &[Observation], spec: &ColumnSpec) -> Vec<usize> {
     let zero_is_value = matches!(project.plan.zero_state, ZeroState::Zero | ZeroState::LiveZero);
     let has_value = spec.family.has_value_at(0.0);
+    if spec.family == Family::OnePoint {
+        let top = observations.iter().filter(|o| !o.is_zero()).map(|o| o.x).fold(f64::NEG_INFINITY, f64::max);
+        return (0..observations.len()).filter(|&i| !observations[i].is_zero() && observations[i].x >= top).collect();
+    }
     fitted(observations, spec.zeros.unwrap_or(project.plan.zeros_part), zero_is_value && has_value)
 }
 
 enum NoFit {
     Undeclared,
+    StandardsExact,
     Formula(String),
     Fit(FitError),
 }
 
-fn fit_column(project: &Project, spec: &ColumnSpec, points: &[Point]) -> Result<Fit, NoFit> {
+fn fit_column(
+    project: &Project,
+    spec: &ColumnSpec,
+    points: &[Point],
+    stated: &[f64],
+    doubt: Option<&StandardsDoubt>,
+) -> Result<Fit, NoFit> {
     if spec.family != Family::Declared {
-        return fit::fit(&spec.family, points, spec.weights).map_err(NoFit::Fit);
+        let any = stated.iter().any(|u| u.is_finite());
+        let reading_uncertainty = any.then_some(stated);
+        let units = Units::of(&project.plan.input.unit, &project.plan.output.unit);
+        let request = Request { reading_uncertainty, units, ..Request::new(&spec.family, points, spec.weights) };
+        return match (spec.axes, doubt) {
+            (Axes::ReadingsOnly, _) => fit::estimate(&request).map_err(NoFit::Fit),
+            (Axes::Both, Some(doubt)) => fit::fit_both_axes(&request, doubt).map_err(NoFit::Fit),
+            (Axes::Both, None) => Err(NoFit::StandardsExact),
+        };
     }
     let declared = project.declared.as_ref().ok_or(NoFit::Undeclared)?;
     let formula: Formula = declared.formula.parse().map_err(|e| NoFit::Formula(format!("{e}")))?;
@@ -88,6 +120,9 @@ fn place(reason: &NoFit, project: &Project, observations: &[Observation], used: 
         Some(format!("reading {} ({raw} at {})", id.0, words::plain(o.x)))
     };
     match reason {
+        NoFit::StandardsExact => {
+            "a fit in both axes needs the uncertainty of the standards; none of them states any".to_owned()
+        }
         NoFit::Undeclared => "no function is declared".to_owned(),
         NoFit::Formula(e) => format!("the declared function cannot be read: {e}"),
         NoFit::Fit(e) => {
@@ -100,6 +135,14 @@ fn place(reason: &NoFit, project: &Project, observations: &[Observation], used: 
                 | FitError::OutOfRange
                 | FitError::TooClose { .. }
                 | FitError::DegreeTooHigh { .. }
+                | FitError::NoUncertainty
+                | FitError::NoRepeats
+                | FitError::IdenticalRepeats
+                | FitError::NotConverged { .. }
+                | FitError::NoStart { .. }
+                | FitError::BothAxes { .. }
+                | FitError::Units { .. }
+                | FitError::Formula { .. }
                 | FitError::NotFitted => None,
             };
             match at {
@@ -114,7 +157,13 @@ fn infer(project: &Project, fit: Fit, used: Vec<usize>, zeros_fitted: bool, zero
     let shape = shape(&fit);
     let departure = departure(&fit, &shape);
     let near_zero = near_zero::detection(project, &fit, zeros);
+    let plan = &project.plan;
+    let true_zero = matches!(plan.zero_state, ZeroState::Zero | ZeroState::LiveZero);
+    let quantified = || quantification(&fit, plan.detection.k as usize, plan.detection.target);
     FitEvaluation {
+        printed: printed(&fit),
+        flipped: flipped_difference(&fit),
+        quantification: if true_zero { quantified() } else { None },
         coefficients: coefficients(project, &fit),
         lack_of_fit: lack_of_fit(&fit),
         residual_sd_input: input_size(&fit, fit.residual_sd),
@@ -146,14 +195,14 @@ pub fn ends(fit: &Fit) -> Option<(f64, f64)> {
 fn coefficients(project: &Project, fit: &Fit) -> Vec<Coefficient> {
     let (y, x) = (&project.plan.output.unit, &project.plan.input.unit);
     let u = fit.standard_uncertainties();
-    let nu = fit.degrees_of_freedom as f64;
-    let t = t_quantile(0.5 + project.plan.level / 2.0, nu);
+    let t = fit.coverage_factor(project.plan.level);
     fit.family
         .coefficient_names()
         .into_iter()
+        .zip(&fit.coefficients)
         .enumerate()
-        .map(|(i, name)| {
-            let value = fit.coefficients[i];
+        .map(|(i, (name, value))| {
+            let value = *value;
             let standard_uncertainty = u.as_ref().and_then(|u| u.get(i).copied());
             Coefficient {
                 printed: fit.family.printed_coefficient(i),

@@ -6,6 +6,7 @@
 
 mod advice;
 pub mod column;
+mod doubt;
 pub mod finding;
 pub mod findings;
 pub mod near_zero;
@@ -43,6 +44,7 @@ pub fn evaluate(project: &Project) -> Evaluation {
         specs.iter().map(|spec| column::evaluate(project, &observations, spec, &zeros)).collect();
     for column in &mut columns {
         column.findings = findings::of_column(project, &observations, column);
+        findings::agree(column);
     }
     let at = |wanted: &ColumnSpec| columns.iter().position(|c| c.spec == *wanted && c.outcome.is_ok());
     let chosen = project.choice.as_ref().and_then(|c| at(&c.column));
@@ -54,6 +56,7 @@ pub fn evaluate(project: &Project) -> Evaluation {
         observations: &observations,
         zeros: &zeros,
         advice: &advice,
+        columns: &columns,
         speaking: speaking.map(|i| &columns[i]),
     };
     let findings = findings::all(&facts);

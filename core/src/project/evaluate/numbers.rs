@@ -1,11 +1,14 @@
 //! The figures of a column, in the order of the numbers row and of the report.
 
 use super::{
+    column::ends,
     near_zero::{self, ZeroFacts},
     types::FitEvaluation,
     words,
 };
 use crate::{
+    distributions::chi2_upper,
+    fit::Weights,
     model::Family,
     project::{Project, figures::Figure},
     quantity::format::{ABSENT, p_value, significant, with_standard_uncertainty, with_unit},
@@ -73,11 +76,20 @@ fn read_back(project: &Project, e: &FitEvaluation) -> Vec<Figure> {
 }
 
 fn scatter(project: &Project, e: &FitEvaluation) -> Vec<Figure> {
-    let label = if e.fit.family == Family::Declared { "RMS error" } else { "residual SD" };
+    let plain = e.fit.weights == Weights::Equal && !e.fit.family.fitted_in_measurand() && e.fit.both_axes.is_none();
+    let label = match (&e.fit.family, plain) {
+        (Family::Declared, _) => "RMS error",
+        (_, true) => "residual SD",
+        // Weighted sums have no unit of their own: the SD of one reading has.
+        (_, false) => "reading SD",
+    };
     let text = |v: Option<f64>| v.map_or_else(|| ABSENT.to_owned(), |v| significant(v, 2));
-    let output = e.fit.residual_sd;
-    let input = e.residual_sd_input;
-    vec![
+    let (output, input) = if plain { (e.fit.residual_sd, e.residual_sd_input) } else { at_mid_range(e) };
+    let chi_square = e.fit.chi_square().filter(|(_, nu)| *nu > 0).map(|(value, nu)| {
+        let text = format!("{} ({nu}), {}", significant(value, 3), p_value(chi2_upper(value, nu as f64)));
+        Figure::new("chi_square", "χ²", Some(value), text, "")
+    });
+    let mut all = vec![
         Figure::new("residual_sd", label, output, text(output), project.plan.output.unit.as_str()),
         Figure::new(
             "residual_sd_input",
@@ -86,7 +98,17 @@ fn scatter(project: &Project, e: &FitEvaluation) -> Vec<Figure> {
             text(input),
             project.plan.input.unit.as_str(),
         ),
-    ]
+    ];
+    all.extend(chi_square);
+    all
+}
+
+/// The SD of one reading in the middle of the range: output unit, and as input.
+fn at_mid_range(e: &FitEvaluation) -> (Option<f64>, Option<f64>) {
+    let middle = ends(&e.fit).map(|(low, high)| f64::midpoint(low, high));
+    let output = middle.zip(e.fit.scatter_sd()).map(|(x, s)| (x, s * libm::sqrt(e.fit.variance_at(x))));
+    let usable = output.filter(|(_, sd)| sd.is_finite());
+    (usable.map(|(_, sd)| sd), usable.map(|(x, sd)| sd / e.fit.curve.derivative(x).abs()).filter(|v| v.is_finite()))
 }
 
 fn adequacy(e: &FitEvaluation) -> Vec<Figure> {

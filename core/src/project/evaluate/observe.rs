@@ -19,6 +19,9 @@ pub struct Observation {
     pub y: f64,
     /// The readings behind it, those set aside not among them.
     pub readings: Vec<ReadingId>,
+    /// Standard uncertainty of the observation as entered with its readings, output unit: the root mean square
+    /// over the looks, since what they share does not average out; `None` unless every look has one.
+    pub uncertainty: Option<f64>,
     /// Spread of the looks, output unit; `None` with one look.
     pub looks_sd: Option<f64>,
     /// Direction of approach.
@@ -43,9 +46,12 @@ impl Observation {
     }
 }
 
-/// The stage that is fitted: as left once there is such a reading, else as found.
+/// The stage that is fitted: the one looked at; by default as left once there is such a reading, else as found.
 #[must_use]
 pub fn fitted_stage(project: &Project) -> Stage {
+    if let Some(stage) = project.stage {
+        return stage;
+    }
     let any_left = project.readings.iter().any(|r| r.stage == Stage::AsLeft);
     if any_left { Stage::AsLeft } else { Stage::AsFound }
 }
@@ -81,11 +87,18 @@ fn observe(project: &Project, standard: Option<StandardId>, looks: &[&Reading]) 
         x,
         y,
         readings: looks.iter().map(|r| r.id).collect(),
+        uncertainty: stated(looks),
         looks_sd: (looks.len() > 1).then(|| libm::sqrt(spread / (n - 1.0))),
         direction: first.direction,
         order: first.order.map(f64::from),
         cycle: first.cycle,
     })
+}
+
+/// The uncertainty stated for the looks of one application.
+fn stated(looks: &[&Reading]) -> Option<f64> {
+    let squares: Option<Vec<f64>> = looks.iter().map(|r| r.uncertainty.map(|u| u * u)).collect();
+    squares.map(|all| libm::sqrt(all.iter().sum::<f64>() / all.len() as f64))
 }
 
 /// Positions of the observations that a column fits.

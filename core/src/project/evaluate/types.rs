@@ -6,10 +6,12 @@ use super::{
     observe::Observation,
 };
 use crate::{
+    convert::{FlippedDifference, digits::PrintedCoefficients},
     fit::Fit,
     inference::{departure::Departure, ftest::FTest, shape::Shape},
     project::{columns::ColumnSpec, figures::Figure, plan::ZeroState},
     readings::Stage,
+    zero::quantification::Quantification,
 };
 
 /// Everything computed from a project.
@@ -169,6 +171,12 @@ pub struct FitEvaluation {
     pub level_out_rmse: Option<f64>,
     /// Whether the zeros take part in the fit.
     pub zeros_fitted: bool,
+    /// The coefficients as texts good enough to hand on; `None` while the scatter is not known.
+    pub printed: Option<PrintedCoefficients>,
+    /// How far the flipped fit lies from the inverted one; `None` where there is none.
+    pub flipped: Option<FlippedDifference>,
+    /// From where on a value is known to the plan's relative uncertainty; `None` without a true zero.
+    pub quantification: Option<Quantification>,
     /// Zero band traced through this curve: thresholds and limits, or the reason why not.
     pub near_zero: NearZeroOutcome,
 }

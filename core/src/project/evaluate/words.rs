@@ -118,6 +118,13 @@ pub fn plain(x: f64) -> String {
     format!("{rounded}").replace('-', "−")
 }
 
+/// R² with two digits after its nines, so that it never reads 1 for a fit that is not exact.
+#[must_use]
+pub fn r_squared(r2: f64) -> String {
+    let places = (libm::ceil(-libm::log10(1.0 - r2)) + 1.0).clamp(3.0, 15.0);
+    crate::quantity::format::decimals(r2, places as usize)
+}
+
 /// One reason of the advice as a sentence.
 #[must_use]
 pub fn because(reason: &Because) -> String {
@@ -157,6 +164,9 @@ pub fn because(reason: &Because) -> String {
             numbers.degrees_of_freedom,
             numbers.degrees_needed
         ),
+        Because::Named { family } => {
+            format!("{} is good enough, and the plan names it for this instrument", family.plain_name())
+        }
         Because::WouldDo { family, p } => {
             format!("{} would do (shape {}), but the plan does not allow it", family.plain_name(), p_value(*p))
         }
@@ -167,10 +177,9 @@ pub fn because(reason: &Because) -> String {
 #[must_use]
 pub fn fit_error(error: &FitError) -> String {
     match error {
-        FitError::OutsideDomain { x, .. } => format!(
-            "the logarithm of {} does not exist: choose another function, or set this row aside with a reason",
-            plain(*x)
-        ),
+        FitError::OutsideDomain { what, x, .. } => {
+            format!("{what} {} does not exist: choose another function, or set this row aside with a reason", plain(*x))
+        }
         FitError::NotFinite { .. } => "this is not a finite number".to_owned(),
         FitError::BadWeight { reason, .. } => format!("these weights do not exist here: {reason}"),
         FitError::Undefined { x, .. } => {
@@ -180,6 +189,14 @@ pub fn fit_error(error: &FitError) -> String {
         | FitError::OutOfRange
         | FitError::TooClose { .. }
         | FitError::DegreeTooHigh { .. }
+        | FitError::NoUncertainty
+        | FitError::NoRepeats
+        | FitError::IdenticalRepeats
+        | FitError::NotConverged { .. }
+        | FitError::NoStart { .. }
+        | FitError::BothAxes { .. }
+        | FitError::Units { .. }
+        | FitError::Formula { .. }
         | FitError::NotFitted => error.to_string(),
     }
 }

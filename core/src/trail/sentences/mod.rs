@@ -162,6 +162,7 @@ fn columns(command: &ColumnsCommand, before: &Before<'_>) -> String {
             let heads: Vec<String> = columns.iter().map(|c| c.head()).collect();
             format!("compared {}", heads.join(", "))
         }
+        ColumnsCommand::Stage(stage) => format!("looked at the readings {}", words::stage_looked_at(*stage)),
         ColumnsCommand::Declare(declared) => before.change(
             "the declared function",
             |p| p.declared.as_ref().map(|d| d.formula.to_string()),

@@ -64,6 +64,11 @@ fn field_told(field: &PlanField, before: &Before<'_>) -> String {
             |p| p.plan.repeats.map(|n| n.to_string()),
             &r.map_or(String::new(), |n| n.to_string()),
         ),
+        PlanField::FullScale(full) => before.change(
+            "the full scale of the output",
+            |p| p.plan.full_scale.map(words::number),
+            &full.map_or(String::new(), words::number),
+        ),
         PlanField::Order(t) => text("the order of application", |p| &p.plan.order, t),
         PlanField::Method(t) => text("the method", |p| &p.plan.method, t),
         PlanField::Place(t) => text("the place", |p| &p.plan.place, t),
@@ -101,10 +106,11 @@ fn listed(names: &[String], none: &str) -> String {
 
 fn detection(q: &DetectionQuestion) -> String {
     format!(
-        "α = {}, β = {}, mean of {} readings, from {}",
+        "α = {}, β = {}, mean of {} readings, from {}, quantified at {} %",
         words::number(q.alpha),
         words::number(q.beta),
         q.k,
-        words::basis(q.basis)
+        words::basis(q.basis),
+        words::number(100.0 * q.target)
     )
 }

@@ -78,6 +78,7 @@ fn plan() -> Vec<Command> {
         P::DecisionRule(t("guard band w = U")),
         P::Levels(vec![0.25, 1.0, 5.0]),
         P::Repeats(Some(3)),
+        P::FullScale(Some(2.5)),
         P::Order(t("up, then down")),
         P::Method(t("SW-12 rev 4")),
         P::Place(t("Quay 3")),

@@ -101,6 +101,17 @@ pub fn zeros_part(part: ZerosPart) -> &'static str {
 
 /// What a detection limit rests on.
 #[must_use]
+pub fn stage_looked_at(stage: Option<Stage>) -> &'static str {
+    match stage {
+        None => "of the latest stage",
+        Some(Stage::AsFound) => "as found",
+        Some(Stage::AsLeft) => "as left",
+        Some(Stage::Check) => "taken as a check",
+    }
+}
+
+/// What the detection limit rests on.
+#[must_use]
 pub fn basis(basis: DetectionBasis) -> &'static str {
     match basis {
         DetectionBasis::Zeros => "the zero readings",

@@ -2,7 +2,11 @@
 
 use super::Source;
 use crate::{
+    convert::digits::Form,
     exchange::report::kit::{Align, Block, Cell, Column, FactColumn, ParagraphStyle, Row, Table},
+    fit::Scatter,
+    model::Family,
+    project::columns::Axes,
     project::evaluate::{ColumnEvaluation, FitEvaluation, words::plain},
     quantity::format::{significant, with_unit},
 };
@@ -34,11 +38,12 @@ fn function(source: &Source<'_>, column: &ColumnEvaluation, e: &FitEvaluation) -
     let xs = || e.fit.points.iter().map(|p| p.x);
     let (low, high) = (xs().fold(f64::INFINITY, f64::min), xs().fold(f64::NEG_INFINITY, f64::max));
     let sentence = format!(
-        "{} over {} … {}, least squares, {}, {} observations, {} degrees of freedom. y: {}; x: {}.",
+        "{}{} over {} … {}, {}, {} observations, {} degrees of freedom. y: {}; x: {}.",
         column.formula,
+        column.spec.family.own_units(),
         plain(low),
         with_unit(&plain(high), unit),
-        column.spec.weights.plain_name(),
+        estimator(column, e),
         e.fit.points.len(),
         e.fit.degrees_of_freedom,
         project.plan.output.heading(),
@@ -62,7 +67,7 @@ fn function(source: &Source<'_>, column: &ColumnEvaluation, e: &FitEvaluation) -
         let wanted = column.figures.iter().filter(|f| keys.iter().any(|k| f.key.starts_with(k)));
         wanted.map(|f| (f.label.clone(), f.shown())).collect()
     };
-    let left = rows(&["residual_sd", "degrees_of_freedom", "lack_of_fit", "shape", "r_squared"]);
+    let left = rows(&["residual_sd", "chi_square", "degrees_of_freedom", "lack_of_fit", "shape", "r_squared"]);
     let right = rows(&["worst_read_back", "leftover_bend", "left_out", "detection_limit", "smallest_change"]);
     all.push(Block::Facts {
         columns: vec![
@@ -73,9 +78,58 @@ fn function(source: &Source<'_>, column: &ColumnEvaluation, e: &FitEvaluation) -
     all
 }
 
+/// How the coefficients were found, and what the weights mean.
+fn estimator(column: &ColumnEvaluation, e: &FitEvaluation) -> String {
+    if column.spec.family == Family::Declared {
+        return "declared, nothing fitted".to_owned();
+    }
+    if column.spec.axes == Axes::Both {
+        return "generalised distance regression on readings and standards (absolute)".to_owned();
+    }
+    let meaning = match e.fit.scatter {
+        Scatter::Residuals => "relative: the residuals set the scatter".to_owned(),
+        Scatter::Repeats { degrees_of_freedom, .. } => {
+            format!("pooled: all repeats set the scatter, {degrees_of_freedom} degrees of freedom")
+        }
+        Scatter::Means { degrees_of_freedom, .. } => {
+            format!("relative: the level means set the scatter, {degrees_of_freedom} degrees of freedom")
+        }
+        Scatter::Known => "absolute: the stated uncertainties set the scatter".to_owned(),
+    };
+    let minimised = if e.fit.family.fitted_in_measurand() { " of the temperature" } else { "" };
+    format!("least squares{minimised}, {} ({meaning})", column.spec.weights.plain_name())
+}
+
+/// The coefficients as they are to be handed on: as many digits as no converted value misses.
+fn handed_on(e: &FitEvaluation) -> (usize, String) {
+    const MANY: usize = 10;
+    let all = "The attached evaluation holds all digits and the covariance.";
+    match &e.printed {
+        None => (MANY, all.to_owned()),
+        Some(p) if p.form == Form::Plain => {
+            let promise = format!(
+                "{} significant digits: read back from this table, no converted value moves by more than a twentieth \
+                 of its standard uncertainty. {all}",
+                p.digits
+            );
+            (p.digits, promise)
+        }
+        Some(p) => {
+            let Form::Shifted { centre, scale } = p.form else { return (MANY, all.to_owned()) };
+            let form = format!(
+                "Powers of x need more digits than a device holds. Hand on the coefficients of t = (x − {centre})/{scale} \
+                 instead, constant term first: {}. {all}",
+                p.texts.join(", ")
+            );
+            (MANY, form)
+        }
+    }
+}
+
 fn coefficients(e: &FitEvaluation) -> Block {
     let column = |head: &str, align, weight| Column { head: vec![head.to_owned()], align, weight };
-    let digits = |v: f64| significant(v, 10);
+    let (many, note) = handed_on(e);
+    let digits = |v: f64| significant(v, many);
     let rows = e.coefficients.iter().map(|c| {
         let u = c.standard_uncertainty.map_or_else(|| "–".to_owned(), |u| significant(u, 2));
         let interval = c.interval.map_or_else(
@@ -95,7 +149,7 @@ fn coefficients(e: &FitEvaluation) -> Block {
             column("unit", Align::Left, 1.0),
         ],
         rows: rows.collect(),
-        note: Some("The attached evaluation holds all digits and the covariance.".to_owned()),
+        note: Some(note),
     })
 }
 

@@ -1,14 +1,17 @@
 //! Findings on the data as a whole.
 
-use super::{Facts, finding};
+use super::{
+    Facts,
+    context::{expanded_by, furthest},
+    finding, run, saturation,
+};
 use crate::{
-    fit::{Weights, fit},
-    inference::saturation::{Saturation, saturation},
-    model::Family,
+    inference::departure::matters,
     project::evaluate::{
+        column::evaluate as evaluate_column,
         finding::{Finding, Place, Severity},
-        observe::Observation,
-        words::plain,
+        observe::observations,
+        words::{plain, tolerance},
     },
     quantity::format::{significant, with_unit},
 };
@@ -21,8 +24,8 @@ pub(super) fn findings(facts: &Facts<'_>) -> Vec<Finding> {
     found.extend(questioned(facts));
     found.extend(standards_without_papers(facts));
     found.extend(outside_interval(facts));
-    found.extend(looks(facts));
-    found.extend(saturated(facts));
+    found.extend(run::findings(facts));
+    found.extend(saturation::findings(facts));
     found
 }
 
@@ -38,19 +41,45 @@ fn nothing(facts: &Facts<'_>) -> Option<Finding> {
     })
 }
 
+/// What left readings out, and how much depends on it.
 fn set_aside(facts: &Facts<'_>) -> Option<Finding> {
     let n = facts.data.set_aside;
     let all = facts.data.readings + facts.data.zero_readings + n;
+    if n == 0 {
+        return None;
+    }
     let many = n > 1 || n * 10 > all;
-    (n > 0).then(|| {
-        finding(
-            "set-aside",
-            if many { Severity::Look } else { Severity::Note },
-            Place::Data,
-            format!("{n} of {all} readings set aside: the result depends on what was left out"),
-            "each one is printed with its reason",
-        )
-    })
+    let moved = moved_by_setting_aside(facts);
+    let unit = facts.project.plan.input.unit.as_str();
+    let message = match moved {
+        Some((at, size, _)) => format!(
+            "{n} of {all} readings set aside: with them values move by {} at {}",
+            with_unit(&significant(size.abs(), 2), unit),
+            with_unit(&plain(at), unit)
+        ),
+        None => format!("{n} of {all} readings set aside: the result depends on what was left out"),
+    };
+    let severity = if many && moved.is_none_or(|m| m.2) { Severity::Look } else { Severity::Note };
+    Some(finding("set-aside", severity, Place::Data, message, "each one is printed with its reason"))
+}
+
+/// Where and how much the speaking column's values move when everything set aside counts again, and whether
+/// that matters: (x, shift in the input unit, matters).
+fn moved_by_setting_aside(facts: &Facts<'_>) -> Option<(f64, f64, bool)> {
+    let column = facts.speaking?;
+    let fit = &column.outcome.as_ref().ok()?.fit;
+    let mut whole = facts.project.clone();
+    for i in 0..whole.readings.len() {
+        if whole.readings[i].set_aside.is_some() {
+            whole.readings.get_mut(i)?.set_aside = None;
+        }
+    }
+    let observations = observations(&whole, facts.data.stage);
+    let with = evaluate_column(&whole, &observations, &column.spec, facts.zeros).outcome.ok()?.fit;
+    let (at, moved) = furthest(fit, &with)?;
+    let plan = &facts.project.plan;
+    let u = expanded_by(fit, plan.level, at, plan.detection.k);
+    Some((at, moved, matters(moved, tolerance(plan, at), u)))
 }
 
 fn questioned(facts: &Facts<'_>) -> Option<Finding> {
@@ -107,46 +136,4 @@ fn outside_interval(facts: &Facts<'_>) -> Option<Finding> {
             "outside the standards nothing was measured: results there are marked as extrapolated",
         )
     })
-}
-
-fn looks(facts: &Facts<'_>) -> Option<Finding> {
-    let several = facts.observations.iter().filter(|o| o.readings.len() > 1).count();
-    (several > 0).then(|| {
-        finding(
-            "looks-averaged",
-            Severity::Note,
-            Place::Data,
-            format!("{several} applications were looked at more than once; the mean of the looks counts as one"),
-            "ten looks at one placement are one placement",
-        )
-    })
-}
-
-/// Above this share of the first step's slope the top step bends but still answers.
-const STILL_ANSWERS: f64 = 0.15;
-
-/// The instrument has stopped listening at the top: judged on the line, when no function describes the data.
-fn saturated(facts: &Facts<'_>) -> Option<Finding> {
-    if facts.advice.column.is_some() {
-        return None;
-    }
-    let points: Vec<_> = facts.observations.iter().filter(|o| !o.is_zero()).map(Observation::point).collect();
-    let line = fit(&Family::Polynomial(1), &points, Weights::Equal).ok()?;
-    let unit = facts.project.plan.input.unit.as_str();
-    let message = saturation(&line, None).into_iter().find_map(|s| match s {
-        Saturation::Flattens { first_slope, top_slope, .. } if (top_slope / first_slope) < STILL_ANSWERS => {
-            Some(format!(
-                "the top step rises only {} of the first one: it has stopped listening",
-                with_unit(&significant(100.0 * top_slope / first_slope, 2), "%")
-            ))
-        }
-        Saturation::SameMaximum { reading, standards } => Some(format!(
-            "the largest reading {} occurs at {} and at {}: it has stopped listening",
-            plain(reading),
-            plain(standards.0),
-            with_unit(&plain(standards.1), unit)
-        )),
-        _ => None,
-    })?;
-    Some(finding("saturation", Severity::Look, Place::Data, message, "cut the interval to where it still answers"))
 }

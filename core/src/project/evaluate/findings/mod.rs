@@ -1,11 +1,26 @@
 //! Findings of a whole evaluation: data, zeros, record, and the column that speaks.
 
+mod context;
 mod data;
+mod digits;
+mod family;
 mod fitted;
+mod forced;
+mod order;
+mod points;
+mod reach;
 mod record;
+mod run;
+mod saturation;
+mod scatter;
+mod shape;
+mod terms;
+#[cfg(test)]
+mod tests;
+mod thermistor;
 mod zeros;
 
-pub use fitted::{Family as TestFamily, of_column};
+pub use fitted::{agree, of_column};
 
 use super::{
     finding::{Finding, Place, Severity},
@@ -28,6 +43,8 @@ pub struct Facts<'a> {
     pub zeros: &'a ZeroFacts,
     /// Advice.
     pub advice: &'a Advice,
+    /// All columns.
+    pub columns: &'a [ColumnEvaluation],
     /// The column that speaks, if any.
     pub speaking: Option<&'a ColumnEvaluation>,
 }

@@ -1,9 +1,13 @@
 //! Findings on the record: what is still to do before it can be signed.
 
-use super::{Facts, finding};
-use crate::project::{
-    about::Kind,
-    evaluate::finding::{Finding, Place, Severity},
+use super::{Facts, digits, finding};
+use crate::{
+    model::Family,
+    project::{
+        about::Kind,
+        columns::{ColumnSpec, first_columns},
+        evaluate::finding::{Finding, Place, Severity},
+    },
 };
 
 /// What blocks signing, and what an auditor will ask.
@@ -11,8 +15,26 @@ pub(super) fn findings(facts: &Facts<'_>) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(advice(facts));
     found.extend(choice(facts));
+    found.extend(hunting(facts));
+    found.extend(digits::findings(facts));
     found.extend(missing(facts));
     found
+}
+
+/// Combinations of function and weights from which the best one looks better than it is.
+const MANY: usize = 4;
+
+/// Many fits were looked at before one was taken.
+fn hunting(facts: &Facts<'_>) -> Option<Finding> {
+    let first = first_columns();
+    let declared = |c: &ColumnSpec| c.family == Family::Declared;
+    let own = facts.project.columns.iter().filter(|c| !first.contains(c) && !declared(c)).count();
+    (own >= MANY).then(|| {
+        let all = own + first.len();
+        let message = format!("{all} functions and weights were compared: the best of {all} looks better than it is");
+        let hint = "name the function in the plan before the first reading, or check it on new standards";
+        finding("many-tried", Severity::Note, Place::Record, message, hint)
+    })
 }
 
 fn advice(facts: &Facts<'_>) -> Option<Finding> {
