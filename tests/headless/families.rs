@@ -49,7 +49,7 @@ fn table(head: &str, f: fn(f64) -> f64) -> String {
 }
 
 /// The keys of a fit that scripts may rely on.
-const KEYS: [&str; 32] = [
+pub(super) const KEYS: [&str; 32] = [
     "family",
     "weights",
     "converged",
