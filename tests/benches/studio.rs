@@ -1,7 +1,8 @@
 //! Benchmarks: `cargo bench -p assize-tests`. Nothing in a test depends on them.
 //!
-//! Medians on 2 shared cores (x86-64, no GPU), 2026-12-01, other work running: tension link 1.52 ms, photometer
-//! 3.75 ms, load cell 0.95 ms.
+//! Medians on 2 shared cores (x86-64, no GPU), 2026-12-01: tension link 2.4 ms, photometer 4.7 ms, load cell 1.4 ms.
+//! Before the digits to hand on, the quantification limit and the sized mistakes: 1.52 ms,
+//! 3.75 ms, 0.95 ms.
 
 use assize_core::project::evaluate::evaluate;
 use assize_tests::demos::{SHIPPED_SEED, named};

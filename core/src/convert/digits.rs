@@ -116,10 +116,19 @@ impl<'a> Trial<'a> {
     }
 
     fn fewest(&self, coefficients: &[f64], form: Form) -> Option<PrintedCoefficients> {
-        let tried: Vec<PrintedCoefficients> = (1..=MOST).map(|d| self.with(coefficients, form, d)).collect();
-        let good = |p: &PrintedCoefficients| p.worst <= SHARE;
-        let at = (0..tried.len()).find(|&i| tried[i..tried.len().min(i + 3)].iter().all(good))?;
-        tried.into_iter().nth(at)
+        let mut good: Vec<PrintedCoefficients> = Vec::new();
+        for digits in 1..=MOST {
+            let tried = self.with(coefficients, form, digits);
+            if tried.worst <= SHARE {
+                good.push(tried);
+            } else {
+                good.clear();
+            }
+            if good.len() == 3 {
+                break;
+            }
+        }
+        good.into_iter().next()
     }
 
     /// The coefficients with so many digits, and how far the worst value moves.
@@ -140,6 +149,10 @@ impl<'a> Trial<'a> {
             let shift = if shift.is_finite() { shift } else { f64::INFINITY };
             if shift > out.worst {
                 (out.worst, out.at) = (shift, *x);
+            }
+            if out.worst > SHARE {
+                // Too few digits: by how much no longer matters.
+                break;
             }
         }
         out
