@@ -88,3 +88,25 @@ fn no_key_is_null_without_a_reason() {
         assert!(!value.is_null() || key == "reason", "detection.{key}");
     }
 }
+
+/// Characteristics in three forms that belong together, the zero return among them.
+#[test]
+fn characteristics_stand_in_three_forms() {
+    let bench = Bench::new();
+    let rows = "standard,reading,kind,direction\n,0.10,zero,\n1,2.0,standard,rising\n2,4.1,standard,rising\n3,6.0,standard,\n\
+                2,4.3,standard,falling\n1,2.2,standard,falling\n,0.16,zero,\n";
+    let path = bench.file("data.csv", rows);
+    let document = bench.json(&["fit", &path, "--family", "line", "--json"]);
+    let line = fit(&document, "line");
+    let (span, run) = (number(&line["nonlinearity"]["span"]), 3.0);
+    let all = line["characteristics"].as_object().expect("an object");
+    for key in ["nonlinearity_independent", "nonlinearity_terminal", "hysteresis", "zero_return"] {
+        let (output, percent) = (number(&all[key]["output"]), number(&all[key]["percent_of_span"]));
+        assert!((percent - 100.0 * output / span.abs()).abs() < 1e-9, "{key}");
+        let input = number(&all[key]["input"]);
+        assert!((input / output * span.abs() / run - 1.0).abs() < 1e-9, "{key}: {input} {output}");
+    }
+    assert!((number(&all["hysteresis"]["output"]) - 0.2).abs() < 1e-12);
+    assert!((number(&all["zero_return"]["output"]) - 0.06).abs() < 1e-12);
+    assert_eq!(line["hysteresis"], all["hysteresis"]["output"]);
+}

@@ -1,6 +1,6 @@
 //! One column of the comparison: its fit and everything inferred from it.
 
-use super::{near_zero, printed, residual_tests};
+use super::{characteristics, near_zero, printed, residual_tests};
 use crate::{
     convert::digits::{Form, PrintedCoefficients},
     distributions::chi2_upper,
@@ -8,20 +8,12 @@ use crate::{
         Fit,
         robust::{RobustError, RobustFit, huber, theil_sen},
     },
-    inference::{
-        bands::Bands,
-        departure::Departure,
-        ftest::FTest,
-        hysteresis::{hysteresis, repeatability},
-        levels::levels,
-        nonlinearity::nonlinearity,
-    },
+    inference::{bands::Bands, departure::Departure, ftest::FTest, levels::levels},
     project::{
         Project,
         columns::Axes,
         evaluate::{ColumnEvaluation, Evaluation, FitEvaluation},
     },
-    readings::Direction,
 };
 use serde_json::{Map, Value, json};
 
@@ -102,7 +94,7 @@ fn fitted(out: &mut Map<String, Value>, project: &Project, evaluation: &Evaluati
     ];
     out.extend(entries.into_iter().map(|(k, v)| (k.to_owned(), v)));
     out.extend(residual_tests::tests(evaluation, e));
-    out.extend(characteristics(evaluation, e));
+    out.extend(characteristics::characteristics(evaluation, e));
 }
 
 fn values(all: Vec<Option<f64>>) -> impl Fn(usize) -> Option<f64> {
@@ -242,17 +234,4 @@ fn worst(departure: &Departure) -> Value {
 
 fn sensitivity(e: &FitEvaluation) -> Value {
     levels(&e.fit.points).iter().map(|l| json!({"x": l.x, "value": e.fit.curve.derivative(l.x)})).collect()
-}
-
-fn characteristics(evaluation: &Evaluation, e: &FitEvaluation) -> Map<String, Value> {
-    let fit = &e.fit;
-    let approach: Vec<Direction> = e.used.iter().map(|&i| evaluation.observations[i].direction).collect();
-    let line = nonlinearity(&levels(&fit.points)).map(
-        |n| json!({"independent": n.independent, "terminal": n.terminal, "zero_based": n.zero_based, "span": n.span}),
-    );
-    let mut out = Map::new();
-    out.insert("nonlinearity".into(), json!(line));
-    out.insert("hysteresis".into(), json!(hysteresis(&fit.points, &approach).map(|h| h.largest.abs())));
-    out.insert("repeatability".into(), json!(repeatability(&fit.points, &approach).map(|r| r.spread)));
-    out
 }

@@ -2,6 +2,7 @@
 //!
 //! Numbers are shortest round-trip doubles; `null` where a quantity does not exist.
 
+mod characteristics;
 mod fitted;
 mod near_zero;
 mod residual_tests;
