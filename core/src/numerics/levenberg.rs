@@ -163,7 +163,7 @@ const FIRST_REGIONS: [(f64, usize); 3] = [(100.0, 2500), (1.0, 1200), (0.01, 120
 ///
 /// # Source
 ///
-/// Moré (1978), Lecture Notes in Mathematics 630, 105; Bates and Watts, Technometrics 23 (1981) 179, for the
+/// Moré (1978), Lect. Notes Math. 630, 105; Bates and Watts, Technometrics 23 (1981) 179, for the
 /// relative offset. From memory.
 pub fn minimise<P: Problem>(problem: &P, start: &[f64]) -> Result<Minimum, NotConverged> {
     let mut budget = Budget { iterations: 0, evaluations: 2, limit: EVALUATION_LIMIT };

@@ -40,7 +40,7 @@ struct Search<'a, T> {
 ///
 /// # Source
 ///
-/// Moré, The Levenberg–Marquardt algorithm: implementation and theory, Lecture Notes in Mathematics 630
+/// Moré, The Levenberg–Marquardt algorithm: implementation and theory, Lect. Notes Math. 630
 /// (1978) 105, section 5. From memory.
 pub(super) fn step_inside<T: Real>(place: &Place<T>, d: &[f64], radius: f64, lambda: f64, least: f64) -> Step<T> {
     let search = Search { place, d, radius };

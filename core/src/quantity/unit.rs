@@ -78,6 +78,17 @@ const STEMS: [&str; 22] = [
 /// Ratios step their numerator; other units (counts, %, pH, °C) keep their unit and show a power of ten.
 #[must_use]
 pub fn scale_for(unit: &Unit, magnitude: f64) -> Scale {
+    scale_from(unit, magnitude, 0.001)
+}
+
+/// [`scale_for`] an axis, whose labels have less room than a figure in a sentence: a unit that takes no prefix
+/// shows its power of ten below a hundredth already.
+#[must_use]
+pub fn scale_for_axis(unit: &Unit, magnitude: f64) -> Scale {
+    scale_from(unit, magnitude, 0.01)
+}
+
+fn scale_from(unit: &Unit, magnitude: f64, plain_from: f64) -> Scale {
     let same = Scale { factor: 1.0, unit: unit.to_string() };
     if !magnitude.is_finite() || magnitude <= 0.0 || (0.1..1000.0).contains(&magnitude) {
         return same;
@@ -85,7 +96,7 @@ pub fn scale_for(unit: &Unit, magnitude: f64) -> Scale {
     let exponent = libm::floor(libm::log10(magnitude)) as i32;
     let step = exponent.div_euclid(3) * 3;
     stepped(unit.as_str(), step).unwrap_or_else(|| {
-        if (0.01..100_000.0).contains(&magnitude) {
+        if (plain_from..100_000.0).contains(&magnitude) {
             return same;
         }
         let sign = format!("×10{}", superscript_signed(step));
@@ -135,7 +146,8 @@ mod tests {
         assert_eq!(scale_for(&Unit::new("m"), 0.02).unit, "mm");
         assert_eq!(scale_for(&Unit::new("mA"), 0.02).unit, "µA");
         assert_eq!(scale_for(&Unit::new("°C"), 0.02), Scale { factor: 1.0, unit: "°C".into() });
-        assert_eq!(scale_for(&Unit::new("°C"), 0.005).unit, "×10⁻³ °C");
+        assert_eq!(scale_for(&Unit::new("°C"), 0.005).unit, "°C");
+        assert_eq!(scale_for_axis(&Unit::new("°C"), 0.005).unit, "×10⁻³ °C");
         assert_eq!(scale_for(&Unit::new("°C"), 2e-4).unit, "×10⁻⁶ °C");
         assert_eq!(scale_for(&Unit::new("m²"), 0.02).unit, "m²");
         assert_eq!(scale_for(&Unit::new("mg/L"), 0.02).unit, "µg/L");

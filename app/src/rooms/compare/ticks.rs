@@ -3,7 +3,7 @@
 use assize_core::quantity::{
     Unit,
     format::decimals,
-    unit::{Scale, scale_for},
+    unit::{Scale, scale_for_axis},
 };
 
 /// Two ends of an axis, lower first, in the declared unit.
@@ -32,7 +32,7 @@ pub(super) struct Axis {
 /// A range that is empty, reversed or not finite has no ticks. `signed` writes `+4` for `4`.
 pub(super) fn axis(unit: &Unit, range: Range, (length, apart): (f32, f32), signed: bool) -> Axis {
     let (low, high) = range;
-    let scale = scale_for(unit, low.abs().max(high.abs()));
+    let scale = scale_for_axis(unit, low.abs().max(high.abs()));
     let span = (high - low) * scale.factor;
     if !span.is_finite() || span <= 0.0 || length <= 0.0 {
         return Axis { scale, ticks: Vec::new() };
